@@ -1,0 +1,53 @@
+import type { ResultBlock } from '../../workers/contract.js';
+import type { Plan } from '../scan/plan.js';
+import type { ColumnRecord, Counts, Environment, Fingerprints, Relation, RunState } from './records.js';
+import type { Reading } from './reading.js';
+
+export interface NewRun {
+  readonly parent: number | null;
+  readonly relation: Relation;
+  readonly plan: Plan;
+  readonly scanFile: { readonly name: string; readonly text: string };
+  readonly fingerprints: Fingerprints;
+  readonly environment: Environment;
+  readonly columns: readonly ColumnRecord[];
+  readonly wanted: number;
+}
+
+/** Where a chunk stands: consecutive points of one stratum. */
+export interface Span {
+  readonly stratum: number;
+  readonly first: number;
+  readonly count: number;
+}
+
+export interface ChunkResult extends Span {
+  /** Per-point inputs as dispatched: column-major, varied inputs x count. */
+  readonly inputs: Float64Array;
+  readonly result: ResultBlock;
+  readonly worker: string;
+  readonly milliseconds: number;
+}
+
+/** The write side. One coordinator at a time: every call checks that the lease is still ours. */
+export interface Writing extends Reading {
+  createRun(run: NewRun): number;
+  /** Spans already committed, merged, in order. What is left is what must be computed. */
+  committed(run: number): readonly Span[];
+  /** Records an attempt before the chunk is dispatched, so that a restart cannot loop. Returns attempts so far. */
+  recordAttempt(run: number, span: Span): number;
+  attempts(run: number, span: Span): number;
+  /** One transaction. Spans already committed are left as they are (a result delivered twice is stored once). */
+  commit(run: number, results: readonly ChunkResult[]): Counts;
+  /** A point that no worker could do. */
+  recordUnfinished(run: number, stratum: number, index: number, inputs: Float64Array, reason: string): void;
+  /** Gives a child run the committed evaluation (and, with `judged`, the judgement) of these points of its parent. */
+  share(from: number, to: number, span: Span, judged: boolean): void;
+  /** Replaces small segments by full ones where a whole aligned range is committed. */
+  compact(run: number): void;
+  setState(run: number, state: RunState, seconds: number): void;
+  /** Computes, stores and returns the digest of everything committed. */
+  seal(run: number, state: 'complete' | 'incomplete', seconds: number): string;
+  /** Marks the lease alive; call every few seconds. */
+  beat(): void;
+}
