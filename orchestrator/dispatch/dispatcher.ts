@@ -16,10 +16,19 @@ export type ChunkReport =
       /** Wall time the worker spent, for display only. */
       readonly milliseconds: number;
     }
-  | { readonly kind: 'lost'; readonly id: string; readonly worker: string; readonly reason: LossReason }
+  | {
+      readonly kind: 'lost';
+      readonly id: string;
+      readonly worker: string;
+      readonly reason: LossReason;
+      /** For people: exit status, message of the error, limit that was passed. */
+      readonly detail: string;
+    }
   /** The chunk was never worked on (queue emptied, worker of another version): dispatch again, no attempt used. */
   | { readonly kind: 'returned'; readonly id: string; readonly reason: string };
 
+/** `worker-died` alone may be another chunk's fault: a fleet worker dies with all it was working on.
+ *  The other reasons are about this chunk. */
 export const LOSS_REASONS = ['worker-died', 'out-of-memory', 'time-out', 'worker-error'] as const;
 export type LossReason = (typeof LOSS_REASONS)[number];
 
@@ -36,7 +45,8 @@ export interface Dispatcher {
   capacity(): number;
   /** Hands one chunk to the workers; returns at once. The values buffer may be transferred: it is given away. */
   submit(job: ChunkJob): void;
-  /** Every submitted chunk is reported at least once (again if a second worker also finished it). */
+  /** Every submission is reported once. An answer to a chunk that is not in flight (a second worker finished it
+   *  too) is dropped. */
   onReport(listener: (report: ChunkReport) => void): void;
   /** Trouble that ends the run, e.g. Redis lost for good. */
   onBroken(listener: (error: Error) => void): void;

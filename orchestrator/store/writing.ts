@@ -37,6 +37,9 @@ export interface Writing extends Reading {
   /** Records an attempt before the chunk is dispatched, so that a restart cannot loop. Returns attempts so far. */
   recordAttempt(run: number, span: Span): number;
   attempts(run: number, span: Span): number;
+  /** Spans with attempts on record that are not wholly committed, in order: what a coordinator was working on when
+   *  it died. */
+  attempted(run: number): readonly (Span & { readonly attempts: number })[];
   /** One transaction. Spans already committed are left as they are (a result delivered twice is stored once). */
   commit(run: number, results: readonly ChunkResult[]): Counts;
   /** A point that no worker could do. */
