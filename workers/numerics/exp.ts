@@ -1,4 +1,4 @@
-import { powerOfTwo } from './words.js';
+import { timesPowerOfTwo } from './words.js';
 
 const OVERFLOW = 709.782712893383973096;
 const UNDERFLOW = -745.13321910194110842;
@@ -6,8 +6,6 @@ const INVERSE_LN2 = 1.4426950408889634;
 /** ln 2 in two parts; the first has 21 trailing zero bits, so that k * LN2_HIGH is exact. */
 const LN2_HIGH = 6.9314718036912381649e-1;
 const LN2_LOW = 1.90821492927058770002e-10;
-/** 2^-1000 */
-const TINY = powerOfTwo(-1000);
 /** Remez polynomial of r (e^r + 1) / (e^r - 1) in r^2 on |r| <= ln(2)/2. */
 const P1 = 1.66666666666666019037e-1;
 const P2 = -2.77777777770155933842e-3;
@@ -29,12 +27,5 @@ export function exp(x: number): number {
   const r = high - low;
   const z = r * r;
   const c = r - z * (P1 + z * (P2 + z * (P3 + z * (P4 + z * P5))));
-  return scale(1 - (low - (r * c) / (2 - c) - high), k);
-}
-
-/** y * 2^k for y near 1, rounded once even where the result is subnormal. */
-function scale(y: number, k: number): number {
-  if (k === 0) return y;
-  if (k < -1021) return y * powerOfTwo(k + 1000) * TINY;
-  return k > 1023 ? y * 2 * powerOfTwo(1023) : y * powerOfTwo(k);
+  return timesPowerOfTwo(1 - (low - (r * c) / (2 - c) - high), k);
 }

@@ -25,7 +25,15 @@ export function withoutLowWord(x: number): number {
   return double[0];
 }
 
+/** y * 2^k for y near 1, rounded once even where the result is subnormal or overflows. */
+export function timesPowerOfTwo(y: number, k: number): number {
+  if (k === 0) return y;
+  if (k < -1021) return y * powerOfTwo(k + 1000) * TINY;
+  return k > 1023 ? y * 2 * powerOfTwo(1023) : y * powerOfTwo(k);
+}
+
 /** 2^k exactly, for a normal result: -1022 <= k <= 1023. */
-export function powerOfTwo(k: number): number {
+function powerOfTwo(k: number): number {
   return withHighWord(0, (k + 1023) << 20);
 }
+const TINY = powerOfTwo(-1000);
