@@ -7,10 +7,22 @@ export interface Reading {
   run(id: number): RunRecord | undefined;
   columns(run: number): readonly ColumnRecord[];
   constraints(run: number): readonly ConstraintRecord[];
-  /** Batches in (stratum, index) order with the asked columns. Memory stays at one batch. */
-  batches(run: number, columns: readonly string[]): Iterable<Batch>;
+  /** Batches in (stratum, index) order with the asked columns, from a position on. Memory stays at one batch
+   *  (and a bounded cache, with which arrays may be shared: they must not be written to).
+   *  @throws UserMistake for a name that is no column of the run */
+  batches(run: number, columns: readonly string[], from?: Position): Iterable<Batch>;
   chunks(run: number): ChunkStatistics;
+  /** Why a point failed or stayed unfinished; null for every other point. */
+  reason(run: number, stratum: number, index: number): string | null;
+  /** Everything asked inside sees one state of the store. Keep it short: the log cannot shrink meanwhile. */
+  snapshot<T>(ask: () => T): T;
   close(): void;
+}
+
+/** A point of a run. */
+export interface Position {
+  readonly stratum: number;
+  readonly index: number;
 }
 
 export interface ChunkStatistics {
@@ -41,6 +53,15 @@ export interface PageOfPoints {
     readonly index: number;
     readonly values: readonly number[];
   }[];
+}
+
+/** Filtered points in (stratum, index) order, a structure of arrays. */
+export interface SliceOfPoints {
+  readonly count: number;
+  /** Column name -> count values. */
+  readonly columns: ReadonlyMap<string, Float64Array>;
+  /** Where to go on; null after the last committed point. */
+  readonly next: Position | null;
 }
 
 /** points: how many pass the filter; surviving, excluded, failed, unfinished among them; total: all committed. */
@@ -124,6 +145,8 @@ export interface Questions {
   ): DensityGrid;
   scatter(view: View, x: string, y: string, colour: string | null, limit: number): ScatterPoints;
   cutFlow(view: View): CutFlow;
+  /** The next points that pass the filter, at or after a position: for exports that go through all. */
+  slice(view: View, columns: readonly string[], from: Position, limit: number): SliceOfPoints;
   /** Every stored column of one point. */
   point(run: number, stratum: number, index: number): ReadonlyMap<string, number> | undefined;
 }
@@ -136,6 +159,7 @@ export type AsyncQuestions = {
   run(id: number): Promise<RunRecord | undefined>;
   columns(run: number): Promise<readonly ColumnRecord[]>;
   constraints(run: number): Promise<readonly ConstraintRecord[]>;
+  reason(run: number, stratum: number, index: number): Promise<string | null>;
   chunks(run: number): Promise<ChunkStatistics>;
   close(): Promise<void>;
 };

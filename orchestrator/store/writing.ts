@@ -29,6 +29,14 @@ export interface ChunkResult extends Span {
   readonly milliseconds: number;
 }
 
+/** Outcomes of points whose evaluation is already stored: what rejudging writes. Column-major, as ResultBlock. */
+export interface JudgedSpan extends Span {
+  readonly outcomes: Uint8Array;
+  readonly margins: Float64Array;
+  readonly logLikelihoods: Float64Array;
+  readonly verdicts: Uint8Array;
+}
+
 /** The write side. One coordinator at a time: every call checks that the lease is still ours. */
 export interface Writing extends Reading {
   createRun(run: NewRun): number;
@@ -36,6 +44,8 @@ export interface Writing extends Reading {
   committed(run: number): readonly Span[];
   /** Records an attempt before the chunk is dispatched, so that a restart cannot loop. Returns attempts so far. */
   recordAttempt(run: number, span: Span): number;
+  /** Takes back the last attempt: the chunk was never worked on. */
+  withdrawAttempt(run: number, span: Span): void;
   attempts(run: number, span: Span): number;
   /** Spans with attempts on record that are not wholly committed, in order: what a coordinator was working on when
    *  it died. */
@@ -44,8 +54,12 @@ export interface Writing extends Reading {
   commit(run: number, results: readonly ChunkResult[]): Counts;
   /** A point that no worker could do. */
   recordUnfinished(run: number, stratum: number, index: number, inputs: Float64Array, reason: string): void;
-  /** Gives a child run the committed evaluation (and, with `judged`, the judgement) of these points of its parent. */
+  /** Gives a child run what is committed of these points of its parent: with `judged` evaluation and judgement,
+   *  but not of unfinished points, which the child then tries again; without, the evaluation only, to be judged by
+   *  `judge` (unfinished points stay unfinished: give them verdict 3 again). */
   share(from: number, to: number, span: Span, judged: boolean): void;
+  /** Judgement of shared points; they count as committed from now on. One transaction; safe to repeat. */
+  judge(run: number, spans: readonly JudgedSpan[]): Counts;
   /** Replaces small segments by full ones where a whole aligned range is committed. */
   compact(run: number): void;
   setState(run: number, state: RunState, seconds: number): void;
@@ -53,4 +67,7 @@ export interface Writing extends Reading {
   seal(run: number, state: 'complete' | 'incomplete', seconds: number): string;
   /** Marks the lease alive; call every few seconds. */
   beat(): void;
+  /** Reads every byte of a run and compares it with the hashes taken when it was written; the digest too, where the
+   *  run has one. @throws Broken 'store-corrupt' naming the first difference */
+  verifyIntegrity(run: number): { readonly segments: number; readonly bytes: number };
 }
