@@ -140,6 +140,8 @@ export interface Model {
   readonly couplings: readonly QuantitySpec[];
   /** Modules in the order they are evaluated. */
   modules(settings: RunningSettings, options: Options): readonly Module[];
+  /** Scale in GeV at which the running of a point starts. */
+  startScale(inputs: ReadonlyMap<string, number>): number;
   /** Running couplings of one point at given scales in GeV; an array a scale, NaN beyond where the running stopped. */
   trace(
     settings: RunningSettings,
