@@ -23,6 +23,8 @@ export interface Stratum {
   readonly method: Method;
   readonly generation: number;
   readonly points: number;
+  /** Name of the stratum that this one, appended by an extension, enlarges or refines. */
+  readonly grownFrom?: string;
   /** Sorted by input name: the dimensions of a low-discrepancy sequence. */
   readonly vary: readonly Axis[];
 }
@@ -48,15 +50,19 @@ export interface Plan {
   readonly remarks: readonly string[];
 }
 
+/** What was expected and what was found instead. */
+export interface Complaint {
+  readonly expected: string;
+  readonly found: string;
+  /** The nearest valid name or another hint, if there is one. */
+  readonly hint?: string;
+}
+
 /** One mistake of the user's: expected, found, where. */
-export interface Mistake {
+export interface Mistake extends Complaint {
   /** 1-based; 0 where the file as a whole is meant. */
   readonly line: number;
   readonly column: number;
   /** e.g. "vary.Mt.range[1]"; empty for the whole file. */
   readonly path: string;
-  readonly expected: string;
-  readonly found: string;
-  /** The nearest valid name or another hint, if there is one. */
-  readonly hint?: string;
 }

@@ -1,0 +1,185 @@
+import type { InputSpec } from '../../workers/contract.js';
+import { gridSize } from '../sampling/grid.js';
+import { SOBOL_DIMENSIONS } from '../sampling/sobol.js';
+import { readAxes, type AxisNode } from './axes.js';
+import { check, mapping, unknownKeys } from './check.js';
+import type { Path } from './path.js';
+import { quote } from './phrases.js';
+import type { Axis, Method, Stratum } from './plan.js';
+import type { Report } from './report.js';
+import { MOST_POINTS, MOST_STRATA, sample, stratum as stratumShape } from './shape.js';
+
+type Axes = ReadonlyMap<string, AxisNode>;
+
+/** A stratum as written: what it samples with, over which axes. */
+interface Draft {
+  readonly path: Path;
+  readonly name: string;
+  readonly method: Method;
+  readonly points: number | undefined;
+  readonly axes: Axes;
+}
+
+export interface Sampled {
+  readonly strata: Stratum[];
+  /** Every axis of the file that some stratum uses. */
+  readonly axes: readonly AxisNode[];
+  /** Inputs under the top-level `vary`, which every stratum varies. */
+  readonly everywhere: ReadonlySet<string>;
+}
+
+/** `sample` and `vary`: one stratum, or a list of strata whose own `vary` merges over the top-level one. */
+export function readStrata(
+  sections: { sample: unknown; vary: unknown },
+  inputs: ReadonlyMap<string, InputSpec>,
+  report: Report,
+): Sampled {
+  const shared = readAxes(sections.vary, inputs, ['vary'], report);
+  const drafts = readDrafts(sections.sample, shared, inputs, report);
+  requireNames(drafts, report);
+  const used = checkUse(drafts, shared, report);
+  const strata = drafts.flatMap((draft) => finish(draft, report));
+  return { strata, axes: used, everywhere: new Set(shared.keys()) };
+}
+
+function readDrafts(
+  raw: unknown,
+  shared: Axes,
+  inputs: ReadonlyMap<string, InputSpec>,
+  report: Report,
+): Draft[] {
+  if (!Array.isArray(raw)) {
+    const found = check(
+      mapping(sample, 'a mapping with method and points, or a list of strata'),
+      raw ?? {},
+      ['sample'],
+      report,
+    );
+    return found ? [{ path: ['sample'], name: 'stratum-1', ...withMethod(found), axes: shared }] : [];
+  }
+  if (raw.length === 0 || raw.length > MOST_STRATA) {
+    report.value(['sample'], {
+      expected: `1 to ${MOST_STRATA} strata`,
+      found: report.describe(['sample'], raw),
+    });
+    return [];
+  }
+  return raw.flatMap((entry, i) => readDraft(entry, i, shared, inputs, report));
+}
+
+function readDraft(
+  raw: unknown,
+  i: number,
+  shared: Axes,
+  inputs: ReadonlyMap<string, InputSpec>,
+  report: Report,
+): Draft[] {
+  const path = ['sample', i];
+  const isMapping = typeof raw === 'object' && raw !== null && !Array.isArray(raw);
+  const { vary, ...rest } = (isMapping ? raw : {}) as Record<string, unknown>;
+  const own = readAxes(vary, inputs, [...path, 'vary'], report);
+  const shape = mapping(stratumShape, 'a stratum: a mapping with name, method, points and vary');
+  const unknown = Object.keys(rest).filter((key) => !(key in stratumShape));
+  unknownKeys(unknown, [...Object.keys(stratumShape), 'vary'], path, report);
+  const known = isMapping
+    ? Object.fromEntries(Object.entries(rest).filter(([key]) => key in stratumShape))
+    : raw;
+  const found = check(shape, known, path, report);
+  if (!found) return [];
+  const name = found.name ?? `stratum-${i + 1}`;
+  return [{ path, name, ...withMethod(found), axes: new Map([...shared, ...own]) }];
+}
+
+function withMethod(found: { method?: Method; points?: number }): {
+  method: Method;
+  points: number | undefined;
+} {
+  return { method: found.method ?? 'sobol', points: found.points };
+}
+
+function requireNames(drafts: readonly Draft[], report: Report): void {
+  const seen = new Set<string>();
+  for (const { name, path } of drafts) {
+    if (seen.has(name))
+      report.value([...path, 'name'], { expected: 'a name of its own', found: `a second ${quote(name)}` });
+    seen.add(name);
+  }
+}
+
+/** What an axis must have depends on the samplers that use it. Returns the axes in use. */
+function checkUse(drafts: readonly Draft[], shared: Axes, report: Report): AxisNode[] {
+  const methods = new Map<AxisNode, Set<Method>>([...shared.values()].map((node) => [node, new Set()]));
+  for (const { axes, method } of drafts) {
+    for (const node of axes.values()) methods.set(node, (methods.get(node) ?? new Set()).add(method));
+  }
+  for (const [node, by] of methods) checkAxis(node, by, drafts.length > 0, report);
+  return [...methods].filter(([, by]) => by.size > 0).map(([node]) => node);
+}
+
+function checkAxis(
+  { axis, path, input }: AxisNode,
+  by: ReadonlySet<Method>,
+  sampled: boolean,
+  report: Report,
+): void {
+  if (sampled && by.size === 0) {
+    report.key(path, {
+      expected: 'an axis that some stratum uses',
+      found: `${input.name}, which every stratum replaces`,
+    });
+  }
+  if (!axis) return;
+  if (by.has('grid') && axis.kind === 'gaussian') {
+    report.value(path, { expected: 'range with steps, or list, for a grid', found: 'gaussian' });
+  }
+  if (axis.kind !== 'range') return;
+  if (by.has('grid') && axis.steps === undefined) {
+    const hint = 'the number of values, both ends included';
+    report.value(path, { expected: 'steps for a grid', found: 'a range without steps', hint });
+  }
+  if (by.size > 0 && !by.has('grid') && axis.steps !== undefined) {
+    const hint = 'steps belong to sample: { method: grid }';
+    report.value([...path, 'steps'], {
+      expected: `no steps for ${[...by].join(' and ')}`,
+      found: String(axis.steps),
+      hint,
+    });
+  }
+}
+
+/** A stratum of the plan, or none after complaining. */
+function finish(draft: Draft, report: Report): Stratum[] {
+  const { name, method, path } = draft;
+  const vary = [...draft.axes.values()].flatMap(({ axis }) =>
+    axis ? [method === 'grid' ? axis : withoutSteps(axis)] : [],
+  );
+  vary.sort((a, b) => (a.input < b.input ? -1 : 1));
+  if (draft.axes.size === 0) {
+    report.value(path, { expected: 'at least one input under vary', found: 'none' });
+  }
+  if (method === 'sobol' && vary.length > SOBOL_DIMENSIONS) {
+    report.value(path, {
+      expected: `at most ${SOBOL_DIMENSIONS} inputs for sobol`,
+      found: String(vary.length),
+    });
+  }
+  if (method !== 'grid') return [{ name, method, generation: 0, points: draft.points ?? 10_000, vary }];
+  const size = gridSize(vary);
+  if (draft.points !== undefined) {
+    const hint = 'the steps and lists of a grid say how many points it has';
+    report.value([...path, 'points'], {
+      expected: 'no points for a grid',
+      found: String(draft.points),
+      hint,
+    });
+  }
+  if (size > MOST_POINTS)
+    report.value(path, { expected: `a grid of at most ${MOST_POINTS} points`, found: `${size} points` });
+  return [{ name, method, generation: 0, points: size, vary }];
+}
+
+function withoutSteps(axis: Axis): Axis {
+  if (axis.kind !== 'range') return axis;
+  const { input, kind, from, to, scale } = axis;
+  return { input, kind, from, to, scale };
+}
