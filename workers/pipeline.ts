@@ -1,11 +1,8 @@
 import type {
   Block,
-  Constraint,
   InputSpec,
-  Judgement,
   Model,
   Module,
-  Options,
   PointsBlock,
   QuantitySpec,
   ResultBlock,
@@ -13,19 +10,11 @@ import type {
 } from './contract.js';
 import { compile } from './expressions/compile.js';
 import type { Compiled } from './expressions/compile.js';
+import { judgeBlock } from './judge.js';
+import type { ConstraintInUse } from './judge.js';
 
 const DOMAIN = 1;
 const NOT_FINITE = 4;
-const VIOLATED = 1;
-const NOT_APPLICABLE = 2;
-const SURVIVING = 0;
-const EXCLUDED = 1;
-const FAILED = 2;
-
-export interface ConstraintInUse {
-  readonly constraint: Constraint;
-  readonly options: Options;
-}
 
 /** Evaluates `count` points from `first` of `points` and writes their rows of `into`. */
 export type Pipeline = (points: PointsBlock, first: number, count: number, into: ResultBlock) => void;
@@ -43,8 +32,7 @@ export function createPipeline(task: Task, model: Model, uses: readonly Constrai
     checkDomain(block, model.inputs);
     runModules(block, modules);
     writeQuantities(block, task.keep, first, into);
-    const outcomes = uses.map((use, k) => judge(block, use, k, first, into));
-    writeVerdicts(block, outcomes.slice(0, task.deciding), first, into);
+    judgeBlock(block, uses, task.deciding, first, into);
   };
 }
 
@@ -106,35 +94,4 @@ function writeQuantities(block: Block, keep: readonly string[], first: number, i
     into.quantities.set(values, k * into.count + first);
   });
   into.failures.set(block.failure, first);
-}
-
-/** Judges the block straight into the result's rows; failed points are not judged. Returns the outcomes. */
-function judge(block: Block, use: ConstraintInUse, k: number, first: number, into: ResultBlock): Uint8Array {
-  const start = k * into.count + first;
-  const end = start + block.count;
-  const judgement: Judgement = {
-    outcome: into.outcomes.subarray(start, end),
-    margin: into.margins.subarray(start, end),
-    logLikelihood: into.logLikelihoods.subarray(start, end),
-  };
-  use.constraint.judge(block.columns, use.options, judgement);
-  for (let i = 0; i < block.count; i++) {
-    if (block.failure[i] === 0) continue;
-    judgement.outcome[i] = NOT_APPLICABLE;
-    judgement.margin[i] = NaN;
-    judgement.logLikelihood[i] = NaN;
-  }
-  return judgement.outcome;
-}
-
-function writeVerdicts(
-  block: Block,
-  deciding: readonly Uint8Array[],
-  first: number,
-  into: ResultBlock,
-): void {
-  for (let i = 0; i < block.count; i++) {
-    const excluded = deciding.some((outcome) => outcome[i] === VIOLATED);
-    into.verdicts[first + i] = block.failure[i] !== 0 ? FAILED : excluded ? EXCLUDED : SURVIVING;
-  }
 }
