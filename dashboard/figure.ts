@@ -1,0 +1,205 @@
+import type { AsyncQuestions, DensityGrid, FilteredCounts } from '../orchestrator/store/reading.js';
+import type { ColumnRecord } from '../orchestrator/store/records.js';
+import { classColours, isClass } from './columns.js';
+import { countText } from './numbers.js';
+import { padded, type Axis } from './plots/axis.js';
+import { COUNTS_LABEL, densityPlot } from './plots/density.js';
+import type { Setting } from './plots/drawing.js';
+import { regionsPlot } from './plots/regions.js';
+import { scatterPlot, type Colouring } from './plots/scatter.js';
+import { parseSymbol, symbolText, unitLabel } from './symbols.js';
+import type { RunView, ScaleChoice } from './view.js';
+
+export interface FigureRequest {
+  readonly run: number;
+  /** The whole filter. */
+  readonly where: string;
+  readonly view: RunView;
+  readonly columns: readonly ColumnRecord[];
+  readonly counts: FilteredCounts;
+}
+
+/** A figure ready to be drawn at any size, with what there is to say about it. */
+export interface Figure {
+  /** What the figure shows, in words. */
+  readonly summary: string;
+  /** How it was drawn: kind, how many points are missing from it. */
+  readonly remark: string;
+  draw(setting: Setting): string;
+}
+
+/** Single points up to this many; beyond, cells say more and weigh less. */
+const MOST_POINTS = 4000;
+
+/** Asks the store for what the figure needs; undefined where no point passes the filter. */
+export async function figureOf(
+  questions: AsyncQuestions,
+  request: FigureRequest,
+): Promise<Figure | undefined> {
+  const { view, columns, counts } = request;
+  const x = columns.find((column) => column.name === view.x);
+  const y = columns.find((column) => column.name === view.y);
+  const colour = columns.find((column) => column.name === view.colour);
+  if (!x || !y || counts.points === 0) return undefined;
+  const points = view.drawing === 'points' || (view.drawing === 'auto' && counts.points <= MOST_POINTS);
+  return points ? asPoints(questions, request, x, y, colour) : asCells(questions, request, x, y, colour);
+}
+
+async function asPoints(
+  questions: AsyncQuestions,
+  { run, where, view, counts }: FigureRequest,
+  x: ColumnRecord,
+  y: ColumnRecord,
+  colour: ColumnRecord | undefined,
+): Promise<Figure> {
+  const found = await questions.scatter({ run, where }, x.name, y.name, colour?.name ?? null, MOST_POINTS);
+  const axes = {
+    x: axisOf(x, rangeOf(found.x, scaleOf(x, view.xScale)), scaleOf(x, view.xScale)),
+    y: axisOf(y, rangeOf(found.y, scaleOf(y, view.yScale)), scaleOf(y, view.yScale)),
+  };
+  const spec = { ...axes, xs: found.x, ys: found.y, colour: colouring(colour, found.colour) };
+  const drawn = found.x.filter((value, i) => placed(axes.x, value) && placed(axes.y, found.y[i])).length;
+  const some =
+    found.x.length < counts.points ? `every ${nth(counts.points / found.x.length)} point in order; ` : '';
+  return {
+    summary: `Points of ${nameOf(y)} against ${nameOf(x)}${colourPhrase(colour)}.`,
+    remark: `${some}${countText(drawn)} points drawn${absentPhrase(found.x.length - drawn)}`,
+    draw: (setting) => scatterPlot(setting, spec),
+  };
+}
+
+async function asCells(
+  questions: AsyncQuestions,
+  { run, where, view, counts }: FigureRequest,
+  x: ColumnRecord,
+  y: ColumnRecord,
+  colour: ColumnRecord | undefined,
+): Promise<Figure> {
+  const [xScale, yScale] = [scaleOf(x, view.xScale), scaleOf(y, view.yScale)];
+  const grid = await questions.density(
+    { run, where },
+    { column: x.name, scale: xScale, range: null },
+    { column: y.name, scale: yScale, range: null },
+    colour?.name ?? null,
+    cellsFor(counts.points),
+  );
+  const axes = {
+    x: axisOf(x, [grid.x.low, grid.x.high], xScale),
+    y: axisOf(y, [grid.y.low, grid.y.high], yScale),
+  };
+  const kind = grid.classes ? 'Regions' : grid.mean ? 'Mean values' : 'Density of points';
+  const cells = `${grid.x.bins} × ${grid.y.bins} cells`;
+  return {
+    summary: `${kind} in the plane of ${nameOf(y)} against ${nameOf(x)}${colourPhrase(colour)}.${classPhrase(grid)}`,
+    remark: `${cells}${grid.classes ? ', smoothed over neighbours' : ''}${absentPhrase(grid.undrawn)}`,
+    draw: (setting) => drawGrid(setting, axes, grid, colour),
+  };
+}
+
+function drawGrid(
+  setting: Setting,
+  axes: { x: Axis; y: Axis },
+  grid: DensityGrid,
+  colour: ColumnRecord | undefined,
+): string {
+  const size = { columns: grid.x.bins, rows: grid.y.bins };
+  if (grid.classes && colour) {
+    const { labels, counts } = grid.classes;
+    return regionsPlot(setting, { ...axes, ...size, labels, counts, colours: classColours(colour) });
+  }
+  const means = grid.mean !== undefined && colour !== undefined;
+  return densityPlot(setting, {
+    ...axes,
+    ...size,
+    values: means ? (grid.mean ?? grid.counts) : grid.counts,
+    kind: means ? 'mean' : 'counts',
+    label: means ? parseSymbol(colour.symbol) : COUNTS_LABEL,
+    unit: means ? unitLabel(colour.unit) : [],
+    scale: means && colour.logarithmic ? 'log' : 'linear',
+    diverging: means && colour.kind === 'margin',
+  });
+}
+
+function colouring(column: ColumnRecord | undefined, values: Float64Array | null): Colouring {
+  if (!column || !values) return { kind: 'none' };
+  if (isClass(column)) {
+    return { kind: 'classes', values, labels: column.labels ?? [], colours: classColours(column) };
+  }
+  return {
+    kind: 'ramp',
+    values,
+    label: parseSymbol(column.symbol),
+    unit: unitLabel(column.unit),
+    scale: column.logarithmic ? 'log' : 'linear',
+    diverging: column.kind === 'margin',
+  };
+}
+
+function scaleOf(column: ColumnRecord, choice: ScaleChoice): 'linear' | 'log' {
+  if (isClass(column)) return 'linear';
+  return choice === 'auto' ? (column.logarithmic ? 'log' : 'linear') : choice;
+}
+
+function axisOf(column: ColumnRecord, range: readonly [number, number], scale: 'linear' | 'log'): Axis {
+  const base = { label: parseSymbol(column.symbol), unit: unitLabel(column.unit), scale };
+  if (isClass(column)) {
+    const labels = column.labels ?? [];
+    return {
+      ...base,
+      low: Math.min(range[0], -0.5),
+      high: Math.max(range[1], labels.length - 0.5),
+      categories: labels,
+    };
+  }
+  const [low, high] = range[0] < range[1] ? range : padded(range[0], range[1], scale);
+  return { ...base, low, high };
+}
+
+function rangeOf(values: Float64Array, scale: 'linear' | 'log'): readonly [number, number] {
+  let low = Infinity;
+  let high = -Infinity;
+  for (const value of values) {
+    if (!Number.isFinite(value) || (scale === 'log' && value <= 0)) continue;
+    low = Math.min(low, value);
+    high = Math.max(high, value);
+  }
+  return padded(low, high, scale);
+}
+
+/** Some four points a cell: fewer would show noise, more would blur edges. */
+function cellsFor(points: number): readonly [number, number] {
+  const across = Math.round(Math.min(160, Math.max(16, Math.sqrt((points / 4) * 1.3))));
+  return [across, Math.round(across / 1.3)];
+}
+
+function placed(axis: Axis, value: number): boolean {
+  return value >= axis.low && value <= axis.high;
+}
+
+function nameOf(column: ColumnRecord): string {
+  return `${symbolText(column.symbol)} (${column.meaning})`;
+}
+
+function colourPhrase(colour: ColumnRecord | undefined): string {
+  return colour ? `, coloured by ${nameOf(colour)}` : '';
+}
+
+function classPhrase(grid: DensityGrid): string {
+  if (!grid.classes) return '';
+  const { labels, counts } = grid.classes;
+  const cells = grid.counts.length;
+  const totals = labels.map((label, index) => {
+    const total = counts.subarray(index * cells, (index + 1) * cells).reduce((sum, count) => sum + count, 0);
+    return total > 0 ? `${label} ${countText(total)}` : '';
+  });
+  return ` Points: ${totals.filter((total) => total !== '').join(', ')}.`;
+}
+
+function absentPhrase(count: number): string {
+  return count > 0 ? `; ${countText(count)} points have no place on these axes` : '';
+}
+
+function nth(ratio: number): string {
+  const n = Math.round(ratio);
+  return n === 2 ? '2nd' : n === 3 ? '3rd' : n <= 1 ? '' : `${n}th`;
+}

@@ -1,0 +1,50 @@
+import type { Request } from 'express';
+import type { FilteredCounts } from '../../orchestrator/store/reading.js';
+import type { ColumnRecord, RunRecord } from '../../orchestrator/store/records.js';
+import type { DashboardDeps } from '../app.js';
+import { figureOf, type Figure } from '../figure.js';
+import { usualView } from '../usual-view.js';
+import { readView, wholeFilter, type FieldMistake, type RunView } from '../view.js';
+import { queryOf, runOf } from './request.js';
+
+/** What an address says about a run, checked against that run. */
+export interface Asked {
+  readonly run: RunRecord;
+  readonly columns: readonly ColumnRecord[];
+  readonly view: RunView;
+  /** The whole filter; empty where it was mistaken. */
+  readonly where: string;
+  readonly mistakes: readonly FieldMistake[];
+}
+
+export async function askedOf(request: Request, { questions, commands }: DashboardDeps): Promise<Asked> {
+  const run = await runOf(request, questions);
+  const columns = await questions.columns(run.id);
+  const { view, mistakes } = readView(queryOf(request), columns, usualView(run, columns));
+  const wrong = await filterMistake(run.id, view, commands);
+  const all = wrong ? [...mistakes, wrong] : mistakes;
+  return { run, columns, view, where: wrong ? '' : wholeFilter(view), mistakes: all };
+}
+
+/** The text first, so that the place of a mistake is a place in the text; then all conditions together. */
+async function filterMistake(
+  run: number,
+  view: RunView,
+  commands: DashboardDeps['commands'],
+): Promise<FieldMistake | undefined> {
+  const text = view.where === '' ? null : await commands.checkFilter(run, view.where);
+  if (text) return { field: 'where', ...text };
+  const whole = wholeFilter(view);
+  const together = whole === '' || whole === view.where ? null : await commands.checkFilter(run, whole);
+  if (!together) return undefined;
+  const { expected, found } = together;
+  return { field: 'where', expected: `${expected} in all conditions together`, found };
+}
+
+export async function figureFor(
+  { run, columns, view, where }: Asked,
+  counts: FilteredCounts,
+  { questions }: DashboardDeps,
+): Promise<Figure | undefined> {
+  return figureOf(questions, { run: run.id, where, view, columns, counts });
+}

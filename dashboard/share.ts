@@ -1,0 +1,43 @@
+import { html, type Safe } from './html.js';
+
+export interface ShareInterval {
+  readonly share: number;
+  readonly low: number;
+  readonly high: number;
+}
+
+/** A share of points with the interval that covers the true share in about 68 % of cases (one standard deviation).
+ *  Unlike the plain square root it stays inside [0, 1] and is not empty where none or all points pass.
+ *  Source: E. B. Wilson, J. Am. Stat. Assoc. 22 (1927) 209, doi:10.1080/01621459.1927.10502953 */
+export function shareOfPoints(part: number, whole: number): ShareInterval | null {
+  if (whole <= 0) return null;
+  const share = part / whole;
+  const z = 1;
+  const centre = (share + (z * z) / (2 * whole)) / (1 + (z * z) / whole);
+  const half =
+    (z * Math.sqrt((share * (1 - share)) / whole + (z * z) / (4 * whole * whole))) / (1 + (z * z) / whole);
+  return { share, low: Math.max(0, centre - half), high: Math.min(1, centre + half) };
+}
+
+/** "12.34 %" with as many digits as its uncertainty deserves, and the uncertainty below. */
+export function shareHtml(part: number, whole: number): Safe {
+  const interval = shareOfPoints(part, whole);
+  if (interval === null) return html`–`;
+  const digits = digitsFor(Math.max(interval.high - interval.share, interval.share - interval.low));
+  const per = (value: number): string => (100 * value).toFixed(digits);
+  return html`${per(interval.share)}&#8239;%
+    <span class="error"
+      ><span class="unseen">uncertainty </span>+${per(interval.high - interval.share)}
+      −${per(interval.share - interval.low)}</span
+    >`;
+}
+
+export function shareText(part: number, whole: number): string {
+  const interval = shareOfPoints(part, whole);
+  if (interval === null) return '–';
+  return `${(100 * interval.share).toFixed(digitsFor(interval.high - interval.low))} %`;
+}
+
+function digitsFor(error: number): number {
+  return Math.min(4, Math.max(0, 1 - Math.floor(Math.log10(Math.max(100 * error, 1e-4)))));
+}

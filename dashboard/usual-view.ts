@@ -1,0 +1,38 @@
+import type { ColumnRecord, RunRecord } from '../orchestrator/store/records.js';
+import type { CheckFacts } from '../orchestrator/commands/commands.js';
+import { isClass } from './columns.js';
+import type { RunView } from './view.js';
+
+type Plan = CheckFacts['plan'];
+
+/** What a run page shows before anything is chosen: the two inputs that are varied most widely against each other,
+ *  coloured by the first class the model gives, or by verdict. */
+export function usualView(
+  run: RunRecord,
+  columns: readonly ColumnRecord[],
+): Pick<RunView, 'x' | 'y' | 'colour' | 'columns'> {
+  const varied = variedInputs(run).filter((name) => columns.some((column) => column.name === name));
+  const spare = columns
+    .filter((column) => column.kind === 'quantity' && !isClass(column))
+    .map((one) => one.name);
+  const [x, y] = [...varied, ...spare, 'index', 'stratum'];
+  const named = columns.filter((column) => column.kind === 'quantity' && isClass(column));
+  const numbers = columns.filter((column) => column.kind === 'quantity' && !isClass(column)).slice(0, 3);
+  return {
+    x,
+    y,
+    colour: named[0]?.name ?? 'verdict',
+    columns: ['verdict', ...varied, ...named.map((one) => one.name), ...numbers.map((one) => one.name)],
+  };
+}
+
+/** Inputs varied over a range before those with a measured spread, in order of name. */
+export function variedInputs(run: RunRecord): readonly string[] {
+  const plan = JSON.parse(run.plan) as Plan;
+  const ranged = new Map<string, boolean>();
+  for (const axis of plan.strata.flatMap((stratum) => stratum.vary)) {
+    ranged.set(axis.input, (ranged.get(axis.input) ?? false) || axis.kind === 'range');
+  }
+  const names = [...ranged.keys()].sort();
+  return [...names.filter((name) => ranged.get(name)), ...names.filter((name) => !ranged.get(name))];
+}
