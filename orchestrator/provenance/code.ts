@@ -1,49 +1,58 @@
-import type { Task } from '../../workers/contract.js';
-import { constraints } from '../../workers/constraints/catalogue.js';
-import { models } from '../../workers/models/catalogue.js';
+import { createHash } from 'node:crypto';
+import { existsSync, readFileSync } from 'node:fs';
+import { dirname, join, relative, resolve, sep } from 'node:path';
+import { fileURLToPath } from 'node:url';
 import { Broken } from '../mistakes.js';
-import type { Plan } from '../scan/plan.js';
-import type { Fingerprints } from '../store/records.js';
 import { fingerprint } from './canonical.js';
-import { codeFingerprint } from './code-closure.js';
+import { packageRoot } from './package-root.js';
 
-export { codeFingerprint } from './code-closure.js';
-
-/** Fingerprints of everything the results of a plan are a function of.
- *  @throws Broken 'unknown-name' for a model or constraint that this version does not have */
-export function fingerprintsOf(plan: Plan, task: Task): Fingerprints {
-  const model = known(models, task.model.name, 'model');
-  const modules = model.modules(task.running, task.model.options);
-  return {
-    plan: fingerprint(plan),
-    task: fingerprint(task),
-    model: codeOf(model.code),
-    modules: {
-      ...Object.fromEntries(modules.map((module) => [module.name, codeOf(module.code)])),
-      // What calls the modules, judges and compiles definitions.
-      evaluation: codeOf(here('../../workers/evaluate.js')),
-    },
-    constraints: Object.fromEntries(
-      task.constraints.map(({ name }) => [name, codeOf(known(constraints, name, 'constraint').code)]),
-    ),
-    sampling: codeOf(here('../sampling/sampler.js')),
-  };
+/** Fingerprint of a file of code and all it imports by relative path, however far: of content, not of a version
+ *  somebody must remember to raise. Always of the built files, so that sources and dist/ give the same answer.
+ *  @param url    import.meta.url of the file, a source (.ts) or a built file (.js)
+ *  @param except urls of files at which the walk stops: they are left out, and what only they import
+ *  @throws       Broken 'not-built' where a built file is missing */
+export function codeFingerprint(url: string, except: readonly string[] = []): string {
+  const start = builtFile(url);
+  const key = [start, ...except].join('\n');
+  const known = cache.get(key);
+  if (known !== undefined) return known;
+  const answer = fingerprint(closure(start, new Set(except.map(builtFile))));
+  cache.set(key, answer);
+  return answer;
 }
 
-/** A catalogue only says where things are: what a plan uses of it has a fingerprint of its own, and what it does
- *  not use must not end the reuse of its results. */
-function codeOf(url: string): string {
-  return codeFingerprint(url, CATALOGUES.map(here));
+const cache = new Map<string, string>();
+
+/** Path below dist/ -> SHA-256 of the content, for every file reached. */
+function closure(start: string, except: ReadonlySet<string>): Record<string, string> {
+  const base = join(packageRoot(start), 'dist');
+  const found: Record<string, string> = {};
+  const waiting = [start];
+  for (let file = waiting.pop(); file !== undefined; file = waiting.pop()) {
+    const name = relative(base, file).split(sep).join('/');
+    if (name in found || except.has(file)) continue;
+    const text = readBuilt(file);
+    found[name] = createHash('sha256').update(text).digest('hex');
+    waiting.push(...relativeImports(text).map((specifier) => resolve(dirname(file), specifier)));
+  }
+  return found;
 }
 
-const CATALOGUES = ['../../workers/models/catalogue.js', '../../workers/constraints/catalogue.js'];
-
-function here(path: string): string {
-  return new URL(path, import.meta.url).href;
+/** What the compiler emits has one form: import or export ... from '...', import '...', import('...'). */
+function relativeImports(text: string): string[] {
+  const pattern = /(?:\bfrom|\bimport)\s*\(?\s*(['"])(\.{1,2}\/[^'"\n]+)\1/g;
+  return [...text.matchAll(pattern)].map((match) => match[2]);
 }
 
-function known<T>(catalogue: ReadonlyMap<string, T>, name: string, what: string): T {
-  const entry = catalogue.get(name);
-  if (entry === undefined) throw new Broken('unknown-name', `this version has no ${what} called ${name}`);
-  return entry;
+function builtFile(url: string): string {
+  const file = fileURLToPath(new URL(url));
+  const root = packageRoot(file);
+  const name = relative(root, file);
+  if (name.startsWith(`dist${sep}`)) return file;
+  return join(root, 'dist', name.replace(/\.ts$/, '.js'));
+}
+
+function readBuilt(file: string): string {
+  if (!existsSync(file)) throw new Broken('not-built', `${file} is missing: run "npm run build" first`);
+  return readFileSync(file, 'utf8');
 }

@@ -14,6 +14,7 @@ export interface ChunkLog {
 }
 
 export function chunkLogIn(db: Connection): ChunkLog {
+  const place = 'run = ? AND stratum = ? AND first = ? AND count = ?';
   type Key = [number, number, number, number];
   const attempt = db
     .prepare<Key, number>(
@@ -23,13 +24,9 @@ export function chunkLogIn(db: Connection): ChunkLog {
     .pluck();
   const withdraw = db.prepare<Key>(
     `UPDATE attempts SET attempts = attempts - 1
-     WHERE run = ? AND stratum = ? AND first = ? AND count = ? AND attempts > 0`,
+     WHERE ${place} AND attempts > 0`,
   );
-  const attempts = db
-    .prepare<Key, number>(
-      'SELECT attempts FROM attempts WHERE run = ? AND stratum = ? AND first = ? AND count = ?',
-    )
-    .pluck();
+  const attempts = db.prepare<Key, number>(`SELECT attempts FROM attempts WHERE ${place}`).pluck();
   const attempted = db.prepare<[number], Span & { attempts: number }>(
     'SELECT stratum, first, count, attempts FROM attempts WHERE run = ? AND attempts > 0 ORDER BY stratum, first, count',
   );

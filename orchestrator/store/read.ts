@@ -10,6 +10,7 @@ import type { Batch } from './records.js';
 import { runsIn } from './runs.js';
 import { segmentsIn } from './segments.js';
 import { onStore } from './sqlite-trouble.js';
+import { verifyRun } from './verify-integrity.js';
 
 /** Bytes of columns kept in memory: sixteen columns of a million points. */
 const CACHE = 128 * 1024 * 1024;
@@ -18,7 +19,8 @@ const CACHE = 128 * 1024 * 1024;
 export function readingOf(path: string, db: Connection): Reading {
   const runs = runsIn(db);
   const extents = extentsIn(db);
-  const segments = { read: cachedColumns(segmentsIn(db).read, CACHE) };
+  const stored = segmentsIn(db);
+  const segments = { read: cachedColumns(stored.read, CACHE) };
   const snapshot = <T>(ask: () => T): T =>
     onStore(path, () => (db.inTransaction ? ask() : db.transaction(ask)()));
   const source = (run: number): BatchSource => ({ run, layout: runs.layout(run), extents, segments });
@@ -44,6 +46,9 @@ export function readingOf(path: string, db: Connection): Reading {
       }
     },
     reason: (run, stratum, index) => snapshot(() => reasonOf(db, next, run, { stratum, index })),
+    verifyIntegrity: (run) =>
+      // The file is read, not the cache.
+      snapshot(() => verifyRun(db, { ...source(run), segments: stored }, runs.get(run)?.digest ?? null)),
     close: () => void db.close(),
   };
 }

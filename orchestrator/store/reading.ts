@@ -16,6 +16,9 @@ export interface Reading {
   reason(run: number, stratum: number, index: number): string | null;
   /** Everything asked inside sees one state of the store. Keep it short: the log cannot shrink meanwhile. */
   snapshot<T>(ask: () => T): T;
+  /** Reads every byte of a run and compares it with the hashes taken when it was written; the digest too, where the
+   *  run has one. @throws Broken 'store-corrupt' naming the first difference */
+  verifyIntegrity(run: number): { readonly segments: number; readonly bytes: number };
   close(): void;
 }
 

@@ -16,7 +16,6 @@ import { segmentsIn } from './segments.js';
 import { shareSpan } from './share.js';
 import { mergeSpans, subtractSpans } from './spans.js';
 import { onStore } from './sqlite-trouble.js';
-import { verifyRun } from './verify-integrity.js';
 import type { ChunkResult, JudgedSpan, Span, Writing } from './writing.js';
 
 /** The write side over an open connection whose lease is ours. */
@@ -127,10 +126,6 @@ export function writingOf(path: string, db: Connection, lease: Lease): Writing {
       });
     },
     beat: () => writeLightly(() => undefined),
-    verifyIntegrity: (run) =>
-      onStore(path, () =>
-        verifyRun(db, { run, layout: runs.layout(run), segments, extents }, reading.run(run)?.digest ?? null),
-      ),
     close: () => closeCleanly(path, db, lease),
   };
 }

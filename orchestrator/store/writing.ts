@@ -67,7 +67,4 @@ export interface Writing extends Reading {
   seal(run: number, state: 'complete' | 'incomplete', seconds: number): string;
   /** Marks the lease alive; call every few seconds. */
   beat(): void;
-  /** Reads every byte of a run and compares it with the hashes taken when it was written; the digest too, where the
-   *  run has one. @throws Broken 'store-corrupt' naming the first difference */
-  verifyIntegrity(run: number): { readonly segments: number; readonly bytes: number };
 }
