@@ -1,3 +1,4 @@
+import { createHash } from 'node:crypto';
 import type { PointsBlock, ResultBlock, Task } from '../../workers/contract.js';
 import { LOSS_REASONS, type ChunkJob, type LossReason } from './dispatcher.js';
 import { lengthOf, PARTS, type Part } from './result-shape.js';
@@ -7,6 +8,9 @@ import { lengthOf, PARTS, type Part } from './result-shape.js';
 export interface ChunkMessage {
   readonly scope: string;
   readonly id: string;
+  /** Says what is to be computed, and comes back with the answer: an answer to anything else, left over from another
+   *  coordinator, is not taken for it. */
+  readonly key: string;
   /** Hash of the task document. */
   readonly task: string;
   /** What a worker must run to take the chunk. */
@@ -17,34 +21,20 @@ export interface ChunkMessage {
 }
 
 /** What a worker says of a chunk, as a stream entry; `broken` is about the task, not the chunk. */
-export type Answer =
-  | {
-      readonly kind: 'done';
-      readonly id: string;
-      readonly worker: string;
-      readonly milliseconds: number;
-      readonly body: Buffer;
-    }
-  | {
-      readonly kind: 'lost';
-      readonly id: string;
-      readonly worker: string;
-      readonly reason: LossReason;
-      readonly detail: string;
-    }
-  | {
-      readonly kind: 'returned' | 'broken';
-      readonly id: string;
-      readonly worker: string;
-      readonly detail: string;
-    };
+export type Answer = { readonly id: string; readonly key: string; readonly worker: string } & (
+  | { readonly kind: 'done'; readonly milliseconds: number; readonly body: Buffer }
+  | { readonly kind: 'lost'; readonly reason: LossReason; readonly detail: string }
+  | { readonly kind: 'returned' | 'broken'; readonly detail: string }
+);
 
 export function chunkMessage(
   job: ChunkJob,
   common: Pick<ChunkMessage, 'scope' | 'task' | 'code'>,
 ): ChunkMessage {
-  const { count, values } = job.points;
-  return { ...common, id: job.id, count, values: bytesOf(values).toString('base64') };
+  const count = job.points.count;
+  const values = bytesOf(job.points.values).toString('base64');
+  const key = createHash('sha256').update(`${common.task} ${common.code} ${count} ${values}`).digest('hex');
+  return { ...common, id: job.id, key, count, values };
 }
 
 export function pointsOf(message: ChunkMessage): PointsBlock {
@@ -85,12 +75,13 @@ export function answerOf(fields: readonly Buffer[]): Answer | undefined {
   const found = new Map<string, Buffer>();
   for (let i = 0; i + 1 < fields.length; i += 2) found.set(fields[i].toString(), fields[i + 1]);
   const text = (name: string) => found.get(name)?.toString() ?? '';
-  const [kind, id, worker, detail] = ['kind', 'id', 'worker', 'detail'].map(text);
+  const about = { id: text('id'), key: text('key'), worker: text('worker') };
+  const [kind, detail] = [text('kind'), text('detail')];
   const reason = LOSS_REASONS.find((r) => r === text('reason'));
   const body = found.get('body');
-  if (kind === 'done' && body) return { kind, id, worker, milliseconds: Number(text('milliseconds')), body };
-  if (kind === 'lost' && reason) return { kind, id, worker, reason, detail };
-  if (kind === 'returned' || kind === 'broken') return { kind, id, worker, detail };
+  if (kind === 'done' && body) return { ...about, kind, milliseconds: Number(text('milliseconds')), body };
+  if (kind === 'lost' && reason) return { ...about, kind, reason, detail };
+  if (kind === 'returned' || kind === 'broken') return { ...about, kind, detail };
   return undefined;
 }
 

@@ -32,7 +32,7 @@ export interface FleetWorkerOptions extends ThreadOptions {
  *  @throws Broken 'redis-unreachable', or 'other-version' after refusing a chunk; NotHeld 'redis-lost' */
 export async function runFleetWorker(url: string, options: FleetWorkerOptions): Promise<void> {
   const program = options.program ?? workerProgram();
-  const code = options.code ?? (await fleetCode(program));
+  const code = options.code ?? fleetCode(program);
   const redis = await connectRedis(url, 10);
   const worker = new FleetWorker(redis, code, { ...options, program });
   const link = watchRedis(redis, options.lostMinutes ?? 5, () =>
@@ -114,14 +114,18 @@ class FleetWorker {
     if (this.#hand.delete(message)) await sendAnswer(this.redis, message.scope, answer);
   }
 
-  async #refuse({ id, scope }: ChunkMessage): Promise<void> {
+  async #refuse(message: ChunkMessage): Promise<void> {
     const detail = 'this worker runs another version of the code than the coordinator';
-    await sendAnswer(this.redis, scope, { kind: 'returned', id, worker: this.name, detail });
+    await sendAnswer(this.redis, message.scope, { ...this.#about(message), kind: 'returned', detail });
     this.stop(new Broken('other-version', `${detail}: install the same version on both; the worker ends`));
   }
 
+  #about({ id, key }: ChunkMessage): About {
+    return { id, key, worker: this.name };
+  }
+
   async #work(message: ChunkMessage): Promise<Answer> {
-    const about = { id: message.id, worker: this.name };
+    const about = this.#about(message);
     try {
       const task = () => this.#task(message.task);
       return answerTo(about, await this.#pools.run(message.task, task, pointsOf(message)));
@@ -163,16 +167,18 @@ class FleetWorker {
     const left = [...this.#hand];
     this.#hand.clear();
     const detail = 'the worker was told to stop';
-    const answers = left.map(({ scope, id }) =>
-      sendAnswer(this.redis, scope, { kind: 'returned', id, worker: this.name, detail }),
+    const answers = left.map((message) =>
+      sendAnswer(this.redis, message.scope, { ...this.#about(message), kind: 'returned', detail }),
     );
     await Promise.all(answers);
   }
 }
 
+type About = Pick<Answer, 'id' | 'key' | 'worker'>;
+
 class NoTask extends Error {}
 
-function answerTo(about: { id: string; worker: string }, report: ChunkReport): Answer {
+function answerTo(about: About, report: ChunkReport): Answer {
   switch (report.kind) {
     case 'done':
       return { ...about, kind: 'done', milliseconds: report.milliseconds, body: resultBytes(report.result) };

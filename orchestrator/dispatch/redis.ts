@@ -23,7 +23,7 @@ export interface RedisOptions {
  *  @throws Broken 'redis-unreachable' */
 export function openRedis(url: string, options: RedisOptions = {}): OpenDispatcher {
   return async (task, scope) => {
-    const code = options.code ?? (await fleetCode(workerProgram()));
+    const code = options.code ?? fleetCode(workerProgram());
     const redis = await connectRedis(url, REACH_SECONDS);
     const fleet = new Fleet(redis, task, scope.replaceAll(/[^A-Za-z0-9.-]/g, '-'), code);
     fleet.watch(options.lostMinutes ?? 5, withoutPassword(url));
@@ -165,12 +165,13 @@ class Fleet implements Dispatcher {
     if (answer.kind === 'broken')
       return this.#break(new Broken('worker-start', `${answer.worker}: ${answer.detail}`));
     const flight = this.#flights.get(answer.id);
-    // Nobody waits for it: a second worker finished the chunk too.
-    if (!flight) return;
+    // Nobody waits for it: a second worker finished the chunk too, or it is somebody else's.
+    if (flight?.message.key !== answer.key) return;
     if (answer.kind === 'done') return this.#done(flight, answer);
     this.#end(answer.id);
-    if (answer.kind === 'lost') return this.#onReport(answer);
-    this.#onReport({ kind: 'returned', id: answer.id, reason: `${answer.worker}: ${answer.detail}` });
+    const { id, worker, kind, detail } = answer;
+    if (kind === 'lost') return this.#onReport({ kind, id, worker, reason: answer.reason, detail });
+    this.#onReport({ kind: 'returned', id, reason: `${worker}: ${detail}` });
   }
 
   #done(flight: Flight, answer: Answer & { kind: 'done' }): void {
