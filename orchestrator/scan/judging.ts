@@ -92,6 +92,6 @@ export function readOptions(
   return found && { ...defaultsOf(specs), ...(found as Options) };
 }
 
-function defaultsOf(specs: Readonly<Record<string, OptionSpec>>): Options {
+export function defaultsOf(specs: Readonly<Record<string, OptionSpec>>): Options {
   return Object.fromEntries(Object.entries(specs).map(([name, spec]) => [name, spec.default]));
 }

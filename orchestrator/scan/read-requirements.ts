@@ -29,7 +29,7 @@ export function readRequirements(bytes: Uint8Array, file: string): Partial<Judgi
 
 function sectionsOf(value: unknown, report: Report): Readonly<Record<string, unknown>> {
   const isMapping = typeof value === 'object' && value !== null && !Array.isArray(value);
-  if (isMapping && ('require' in value || 'note' in value)) return value as Record<string, unknown>;
+  if (isMapping && ('require' in value || 'note' in value)) return value;
   const expected = 'a mapping with require or note';
   const found =
     value === undefined || value === null
