@@ -14,7 +14,7 @@ export function valueHtml(value: number | null | undefined, digits = 6): Safe {
     return html`<span class="absent">–<span class="unseen">absent</span></span>`;
   }
   const { mantissa, exponent } = split(value, digits);
-  const power = exponent === 0 ? '' : html`  × 10<sup>${minus(String(exponent))}</sup>`;
+  const power = exponent === 0 ? '' : html`&thinsp;×&thinsp;10<sup>${minus(String(exponent))}</sup>`;
   return html`<data value="${String(value)}">${minus(mantissa)}${power}</data>`;
 }
 

@@ -19,11 +19,11 @@ export function shareOfPoints(part: number, whole: number): ShareInterval | null
   return { share, low: Math.max(0, centre - half), high: Math.min(1, centre + half) };
 }
 
-/** "12.34 %" with as many digits as its uncertainty deserves, and the uncertainty below. */
+/** "12.34 %" to the second digit of its uncertainty, with the uncertainty. */
 export function shareHtml(part: number, whole: number): Safe {
   const interval = shareOfPoints(part, whole);
   if (interval === null) return html`–`;
-  const digits = digitsFor(Math.max(interval.high - interval.share, interval.share - interval.low));
+  const digits = digitsFor(halfWidth(interval)) + 1;
   const per = (value: number): string => (100 * value).toFixed(digits);
   return html`${per(interval.share)}&#8239;%
     <span class="error"
@@ -32,12 +32,18 @@ export function shareHtml(part: number, whole: number): Safe {
     >`;
 }
 
+/** "12.3 %" to the first digit of its uncertainty. */
 export function shareText(part: number, whole: number): string {
   const interval = shareOfPoints(part, whole);
   if (interval === null) return '–';
-  return `${(100 * interval.share).toFixed(digitsFor(interval.high - interval.low))} %`;
+  return `${(100 * interval.share).toFixed(digitsFor(halfWidth(interval)))} %`;
 }
 
+function halfWidth({ low, high }: ShareInterval): number {
+  return (high - low) / 2;
+}
+
+/** Decimals of a percentage down to the first digit of its uncertainty. */
 function digitsFor(error: number): number {
-  return Math.min(4, Math.max(0, 1 - Math.floor(Math.log10(Math.max(100 * error, 1e-4)))));
+  return Math.min(3, Math.max(0, -Math.floor(Math.log10(Math.max(100 * error, 1e-4)))));
 }

@@ -20,8 +20,8 @@ const SEQUENCE: Readonly<Record<Light, readonly string[]>> = {
 };
 /** Negative to positive through a neutral middle. */
 const DIVERGING: Readonly<Record<Light, readonly string[]>> = {
-  day: ['#6d2440', '#b4647f', '#e6e2d8', '#6f97c9', '#1c4c86'],
-  night: ['#f09bb8', '#a3526f', '#3a3d42', '#4a74ad', '#a9cbf5'],
+  day: ['#6d2440', '#b4647f', '#cdc9bb', '#6f97c9', '#1c4c86'],
+  night: ['#f09bb8', '#a3526f', '#4a4e55', '#4a74ad', '#a9cbf5'],
 };
 export type Ramp = 'sequence' | 'diverging';
 

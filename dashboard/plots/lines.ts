@@ -3,7 +3,7 @@ import { FAINT } from './colours.js';
 import { drawing, write, type Box, type Setting } from './drawing.js';
 import { boxOf, frame } from './frame.js';
 import { widthOf, type Label } from './label.js';
-import { classStroke, classFill } from './legend.js';
+import { classStroke } from './legend.js';
 import { element, round } from './svg.js';
 
 export interface Series {
@@ -26,14 +26,14 @@ export function linesPlot(setting: Setting, spec: LinesSpec): string {
   const { size } = setting;
   const plain = boxOf(size, spec.y, { legend: 0, bar: false });
   const names = Math.max(...spec.series.map((series) => widthOf(series.label, size.text)), 0);
-  const box: Box = { ...plain, right: Math.round(plain.right - names - size.text * 0.2) };
+  const box: Box = { ...plain, right: Math.round(plain.right - names - size.text * 0.5) };
   const xAt = placing(spec.x, box.left, box.right);
   const yAt = placing(spec.y, box.bottom, box.top);
   return drawing(
     setting,
     zeroLine(spec.y, box, yAt),
     ...spec.series.map((series) => path(series, spec.xs, xAt, yAt)),
-    ...endNames(spec, box, size.text, yAt),
+    ...endNames(spec, box, size.text, xAt, yAt),
     frame(size, box, spec.x, spec.y),
   );
 }
@@ -69,24 +69,25 @@ function path(
   });
 }
 
-/** Names at the right end of the lines, pushed apart where they would overlap. */
-function endNames(spec: LinesSpec, box: Box, text: number, yAt: (value: number) => number): string[] {
+/** Names where the lines end, pushed apart where they would overlap. */
+function endNames(
+  spec: LinesSpec,
+  box: Box,
+  text: number,
+  xAt: (value: number) => number,
+  yAt: (value: number) => number,
+): string[] {
   const ends = spec.series
-    .map((series) => ({ series, y: yAt(lastFinite(series.values)) }))
-    .filter((end) => Number.isFinite(end.y))
+    .map((series) => ({ series, last: series.values.findLastIndex((value) => Number.isFinite(value)) }))
+    .filter(({ last }) => last >= 0)
+    .map(({ series, last }) => ({ series, x: xAt(spec.xs[last]), y: yAt(series.values[last]) }))
     .sort((a, b) => a.y - b.y);
   spread(ends, text * 1.15, box);
-  return ends.map(({ series, y }) =>
-    write(series.label, box.right + text * 0.45, y + text * 0.3, text, classFill(series.colour)),
-  );
+  return ends.map(({ series, x, y }) => write(series.label, x + text * 0.45, y + text * 0.3, text));
 }
 
 function spread(ends: { y: number }[], gap: number, box: Box): void {
   for (let i = 1; i < ends.length; i++) ends[i].y = Math.max(ends[i].y, ends[i - 1].y + gap);
   let limit = box.bottom;
   for (let i = ends.length - 1; i >= 0 && ends[i].y > limit; i--, limit -= gap) ends[i].y = limit;
-}
-
-function lastFinite(values: readonly number[]): number {
-  return values.findLast((value) => Number.isFinite(value)) ?? NaN;
 }
