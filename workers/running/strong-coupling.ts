@@ -20,7 +20,8 @@ const b3 =
  *  @param a          alpha_s/pi where the running starts, > 0
  *  @param logSquared ln(mu^2/mu0^2) of the end mu over the start mu0
  *  @returns          NaN where Newton's method does not converge (near the Landau pole)
- *  Accuracy: the implicit solution is expanded to the order of the beta function; 1e-4 of alpha_s(m_b) */
+ *  Accuracy: the implicit solution is expanded to the order of the beta function, so that alpha_s(m_b) is good to
+ *            3e-4 and alpha_s(M_t) to 1e-5 for alpha_s(M_Z) below 0.125 (light-yukawas.test.ts) */
 export function runStrongCoupling(a: number, logSquared: number): number {
   const target = implicit(a) + B0 * logSquared;
   let x = a / (1 + a * B0 * logSquared);
