@@ -6,9 +6,10 @@ import type { Counts, RunRecord } from '../store/records.js';
 export interface PointFacts {
   readonly format: 1;
   readonly model: string;
-  readonly inputs: Readonly<Record<string, { value: number; unit: string }>>;
+  /** Null where a definition that sets the input has no value at this point. */
+  readonly inputs: Readonly<Record<string, { value: number | null; unit: string }>>;
   readonly couplings: readonly {
-    scale: { value: number; unit: string };
+    scale: { value: number | null; unit: string };
     at: string;
     values: Readonly<Record<string, number | null>>;
   }[];
