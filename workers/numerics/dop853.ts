@@ -87,11 +87,13 @@ class Integrator implements Dop853 {
 
   at(t: number, out: Float64Array): void {
     const step = this.stepAt(t);
-    for (let i = 0; i < this.n; i++) out[i] = this.inside(step, i, t);
+    const x = this.fraction(step, t);
+    for (let i = 0; i < this.n; i++) out[i] = this.inside(step, i, x);
   }
 
   component(i: number, t: number): number {
-    return this.inside(this.stepAt(t), i, t);
+    const step = this.stepAt(t);
+    return this.inside(step, i, this.fraction(step, t));
   }
 
   private begin(t0: number, t1: number, y0: ArrayLike<number>, { rtol, atol }: Dop853Settings): void {
@@ -188,20 +190,23 @@ class Integrator implements Dop853 {
     return low;
   }
 
-  private inside(step: number, i: number, t: number): number {
-    if (step < 0) return NaN;
+  /** Where in its step t lies: 0 to 1, both exact at the ends; makes the dense output of that step ready. */
+  private fraction(step: number, t: number): number {
+    if (step < 0 || t === this.boundaries[step]) return 0;
+    const [start, end] = [this.boundaries[step], this.boundaries[step + 1]];
+    if (t === end) return 1;
     const slot = this.slots[step];
-    const start = this.boundaries[step];
-    if (t === start) return slot.y[i];
-    const end = this.boundaries[step + 1];
-    const after = this.slots[step + 1];
-    if (t === end) return after.y[i];
-    const h = end - start;
     if (!slot.denseReady) {
-      prepareDense(this.f, start, h, slot, after, this.scratch);
+      prepareDense(this.f, start, end - start, slot, this.slots[step + 1], this.scratch);
       this.evaluations += 3;
     }
-    return denseComponent(slot, i, (t - start) / h);
+    return (t - start) / (end - start);
+  }
+
+  private inside(step: number, i: number, x: number): number {
+    if (step < 0) return NaN;
+    if (x === 0) return this.slots[step].y[i];
+    return x === 1 ? this.slots[step + 1].y[i] : denseComponent(this.slots[step], i, x);
   }
 }
 
