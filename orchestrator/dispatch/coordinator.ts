@@ -185,6 +185,7 @@ class Coordination {
     const { stratum, first, count } = portion;
     const points = this.#samplers[stratum].fill(first, count);
     const id = `${stratum}.${first}.${count}`;
+    if (portion.alone) this.#commit(this.#outbox.takeAll());
     this.drive.store.recordAttempt(this.drive.run, { stratum, first, count });
     // The dispatcher may give the buffer away.
     this.#inFlight.set(id, { portion, inputs: points.values.slice() });
@@ -197,7 +198,12 @@ class Coordination {
     if (!flight) return;
     this.#inFlight.delete(report.id);
     const { portion } = flight;
-    if (report.kind === 'done') return this.#done(flight, report);
+    if (report.kind === 'done') {
+      this.#done(flight, report);
+      // Nothing else has an attempt without an end while a portion is alone: not even a result on its way.
+      if (portion.alone) this.#commit(this.#outbox.takeAll());
+      return;
+    }
     if (report.kind === 'lost') {
       this.#progress.retried += 1;
       return this.#left.lost(portion, report.reason, report.detail);

@@ -4,8 +4,8 @@ import { join } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import type { Plan } from '../../../orchestrator/scan/plan.js';
 import { openForWriting } from '../../../orchestrator/store/open.js';
-import type { ColumnRecord } from '../../../orchestrator/store/records.js';
-import type { Writing } from '../../../orchestrator/store/writing.js';
+import type { ColumnRecord, Environment } from '../../../orchestrator/store/records.js';
+import type { NewRun, Writing } from '../../../orchestrator/store/writing.js';
 import type { Options } from '../../../workers/contract.js';
 
 /** Runs whose points are the whole numbers 0, 1, 2 ... and whose worker is programs/line-worker.mjs. */
@@ -37,25 +37,20 @@ export function linePlan(points: readonly number[], options: Options = {}): Plan
 }
 
 export function createLineRun(store: Writing, plan: Plan): number {
-  return store.createRun({
+  return store.createRun(lineRun(plan));
+}
+
+export function lineRun(plan: Plan): NewRun {
+  return {
     parent: null,
     relation: 'launch',
     plan,
     scanFile: { name: 'line.yaml', text: '' },
     fingerprints: { plan: 'p', task: 't', model: 'm', modules: {}, constraints: {}, sampling: 's' },
-    environment: {
-      trigpoint: '0',
-      commit: '',
-      lockFile: '',
-      node: '',
-      v8: '',
-      os: '',
-      processor: '',
-      cores: 1,
-    },
+    environment: ENVIRONMENT,
     columns: COLUMNS,
     wanted: plan.strata.reduce((sum, part) => sum + part.points, 0),
-  });
+  };
 }
 
 /** A store file in a temporary folder, removed by `remove`. */
@@ -70,6 +65,16 @@ export function temporaryStore(): { path: string; folder: string; open(): Writin
   };
 }
 
+const ENVIRONMENT: Environment = {
+  trigpoint: '0',
+  commit: '',
+  lockFile: '',
+  node: '',
+  v8: '',
+  os: '',
+  processor: '',
+  cores: 1,
+};
 const plain = { unit: '1', symbol: '', meaning: '' };
 const COLUMNS: readonly ColumnRecord[] = [
   { name: 'x', kind: 'input', ...plain },

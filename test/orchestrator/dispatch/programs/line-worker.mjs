@@ -1,15 +1,17 @@
 // A tiny real worker for whole runs: every point has one input x, whole numbers in order. Options of the model say
-// at which x it misbehaves. keep[0] = x + 1, keep[1] = x * x; a point survives if x is even.
+// at which x it misbehaves; with `once`, the name of a file that must not exist yet, it does so a single time.
+// keep[0] = x + 1, keep[1] = x * x; a point survives if x is even.
+import { existsSync, writeFileSync } from 'node:fs';
 import { parentPort, workerData } from 'node:worker_threads';
 
 const { task } = workerData;
-const { hangAt, exitAt, throwAt, outOfMemoryAt, killAt, microseconds = 0 } = task.model.options;
+const { hangAt, exitAt, throwAt, outOfMemoryAt, killAt, once, microseconds = 0 } = task.model.options;
 
 parentPort.on('message', ({ id, points: { count, values } }) => {
   const began = performance.now();
   // The grid divides its range: its numbers are whole but for rounding.
   const points = { count, values: values.map(Math.round) };
-  const has = (x) => x !== undefined && points.values.includes(x);
+  const has = (x) => x !== undefined && points.values.includes(x) && !isOver();
   if (has(hangAt)) for (;;);
   if (has(exitAt)) process.exit(3);
   if (has(throwAt)) throw new Error('thrown by the test program');
@@ -22,6 +24,13 @@ parentPort.on('message', ({ id, points: { count, values } }) => {
     .map((part) => part.buffer);
   parentPort.postMessage({ id, result, milliseconds: performance.now() - began }, buffers);
 });
+
+function isOver() {
+  if (once === undefined) return false;
+  if (existsSync(once)) return true;
+  writeFileSync(once, '');
+  return false;
+}
 
 function evaluate({ count, values }) {
   const judged = task.constraints.length * count;
