@@ -59,6 +59,8 @@ class ReaderThread {
   async close(): Promise<void> {
     if (this.ended) return;
     const over = new Promise<void>((resolve) => this.worker.once('exit', () => resolve()));
+    // Whoever waits for the end must see it, even if nothing else keeps the process alive.
+    this.worker.ref();
     this.worker.postMessage(null);
     await over;
   }
