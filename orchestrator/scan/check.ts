@@ -28,7 +28,7 @@ function complain(issue: Issue, value: unknown, path: Path, report: Report): voi
   const at = [...path, ...(issue.path as (string | number)[])];
   const inside = valueAt(value, issue.path);
   if (issue.code === 'unrecognized_keys')
-    return unknownKeys(issue.keys, issue.message.split(', '), at, report);
+    return unknownKeys(issue.keys, issue.message.split(', ').filter(Boolean), at, report);
   if (issue.code === 'invalid_union') {
     const fitting = bestBranch(issue.errors);
     if (fitting) return fitting.forEach((inner) => complain(inner, inside, at, report));
@@ -58,7 +58,7 @@ export function unknownKeys(
 ): void {
   for (const key of keys) {
     const hint = didYouMean(key, known);
-    const expected = known.length === 1 ? known[0] : `one of ${known.join(', ')}`;
+    const expected = known.length > 1 ? `one of ${known.join(', ')}` : (known[0] ?? 'no keys');
     report.key([...path, key], { expected, found: report.describe([], key), ...(hint ? { hint } : {}) });
   }
 }

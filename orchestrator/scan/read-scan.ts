@@ -19,6 +19,7 @@ import { readTree } from './tree.js';
 type Sections = Readonly<Record<string, unknown>>;
 
 /** Reads a scan file: YAML 1.2, of which JSON is a part.
+ *  A section without content counts as left out.
  *  @param file its name, for mistakes only: the plan is the same whatever the file is called
  *  @returns the plan with every default filled in (files that mean the same give the same plan), and the text
  *  @throws FileMistakes with every mistake of the file, in its order */
@@ -40,7 +41,9 @@ export function readScan(bytes: Uint8Array, file: string): { plan: Plan; text: s
 }
 
 function requireMapping(value: unknown, report: Report): Sections {
-  if (typeof value === 'object' && value !== null && !Array.isArray(value)) return value as Sections;
+  if (typeof value === 'object' && value !== null && !Array.isArray(value)) {
+    return Object.fromEntries(Object.entries(value).filter(([, section]) => section !== null));
+  }
   const found = value === undefined || value === null ? 'an empty file' : report.describe([], value);
   report.value([], { expected: 'a scan file: a mapping with model, vary and so on', found });
   report.throwIfAny();
@@ -64,7 +67,12 @@ interface Head {
 function readHead(sections: Sections, report: Report): Head {
   const named = sections.title === undefined ? undefined : check(title, sections.title, ['title'], report);
   const seeded = sections.seed === undefined ? '1' : check(seed, sections.seed, ['seed'], report);
-  const settings = check(runningShape, sections.running ?? {}, ['running'], report);
+  const settings = check(
+    runningShape,
+    sections.running === undefined ? {} : sections.running,
+    ['running'],
+    report,
+  );
   const running = { loops: settings?.loops ?? 3, tolerance: settings?.tolerance ?? 1e-9 };
   return { title: named, seed: String(seeded), running };
 }

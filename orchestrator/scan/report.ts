@@ -24,8 +24,8 @@ export class Report {
   }
 
   /** A mistake in the value at a path; where the path does not exist, at the nearest part that does.
-   *  @param offset characters into the text of the value, e.g. the place in an expression */
-  value(path: Path, complaint: Complaint, offset = 0): void {
+   *  @param offset characters into the text of the value, e.g. the place in an expression; else its beginning */
+  value(path: Path, complaint: Complaint, offset?: number): void {
     this.push(path, { ...this.tree.placeOf(path, offset), path: pathText(path), ...complaint });
   }
 

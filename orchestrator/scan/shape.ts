@@ -25,13 +25,14 @@ export const title = z
   .regex(PRINTABLE, { error: 'a title in one line' })
   .describe('What the scan is about, in one line.');
 
+const SEED = { error: 'a whole number or a text of 1 to 200 characters (long numbers in quotes)' };
 export const seed = z
   .union(
     [
-      z.string().min(1).max(200).regex(PRINTABLE),
-      z.number().int().min(Number.MIN_SAFE_INTEGER).max(Number.MAX_SAFE_INTEGER),
+      z.string(SEED).min(1, SEED).max(200, SEED).regex(PRINTABLE, SEED),
+      z.int(SEED).min(Number.MIN_SAFE_INTEGER, SEED).max(Number.MAX_SAFE_INTEGER, SEED),
     ],
-    { error: 'a whole number or a text of 1 to 200 characters (long numbers in quotes)' },
+    SEED,
   )
   .describe('Everything random follows from it: the same seed gives the same points. Default "1".');
 

@@ -18,6 +18,8 @@ interface Draft {
   readonly method: Method;
   readonly points: number | undefined;
   readonly axes: Axes;
+  /** Whether `vary` sections say anything, right or wrong. */
+  readonly varies: boolean;
 }
 
 export interface Sampled {
@@ -35,59 +37,66 @@ export function readStrata(
   report: Report,
 ): Sampled {
   const shared = readAxes(sections.vary, inputs, ['vary'], report);
-  const drafts = readDrafts(sections.sample, shared, inputs, report);
+  const written = sizeOf(sections.vary) > 0;
+  const read = Array.isArray(sections.sample)
+    ? readList(sections.sample, shared, inputs, report)
+    : [readOne(sections.sample, shared, report)];
+  const drafts = read.flatMap((draft) => (draft ? [{ ...draft, varies: draft.varies || written }] : []));
   requireNames(drafts, report);
-  const used = checkUse(drafts, shared, report);
+  const used = checkUse(drafts, shared, drafts.length === read.length, report);
   const strata = drafts.flatMap((draft) => finish(draft, report));
   return { strata, axes: used, everywhere: new Set(shared.keys()) };
 }
 
-function readDrafts(
-  raw: unknown,
+function sizeOf(raw: unknown): number {
+  return typeof raw === 'object' && raw !== null ? Object.keys(raw).length : 0;
+}
+
+function readOne(raw: unknown, shared: Axes, report: Report): Draft | undefined {
+  const shape = mapping(sample, 'a mapping with method and points, or a list of strata');
+  const found = check(shape, raw === undefined ? {} : raw, ['sample'], report);
+  return found && { path: ['sample'], name: 'stratum-1', ...withMethod(found), axes: shared, varies: false };
+}
+
+function readList(
+  raw: readonly unknown[],
   shared: Axes,
   inputs: ReadonlyMap<string, InputSpec>,
   report: Report,
-): Draft[] {
-  if (!Array.isArray(raw)) {
-    const found = check(
-      mapping(sample, 'a mapping with method and points, or a list of strata'),
-      raw ?? {},
-      ['sample'],
-      report,
-    );
-    return found ? [{ path: ['sample'], name: 'stratum-1', ...withMethod(found), axes: shared }] : [];
+): (Draft | undefined)[] {
+  if (raw.length > 0 && raw.length <= MOST_STRATA) {
+    return raw.map((entry, i) => readStratum(entry, i, shared, inputs, report));
   }
-  if (raw.length === 0 || raw.length > MOST_STRATA) {
-    report.value(['sample'], {
-      expected: `1 to ${MOST_STRATA} strata`,
-      found: report.describe(['sample'], raw),
-    });
-    return [];
-  }
-  return raw.flatMap((entry, i) => readDraft(entry, i, shared, inputs, report));
+  const expected = `1 to ${MOST_STRATA} strata`;
+  report.value(['sample'], { expected, found: report.describe(['sample'], raw) });
+  return [undefined];
 }
 
-function readDraft(
+function readStratum(
   raw: unknown,
   i: number,
   shared: Axes,
   inputs: ReadonlyMap<string, InputSpec>,
   report: Report,
-): Draft[] {
+): Draft | undefined {
   const path = ['sample', i];
   const isMapping = typeof raw === 'object' && raw !== null && !Array.isArray(raw);
   const { vary, ...rest } = (isMapping ? raw : {}) as Record<string, unknown>;
   const own = readAxes(vary, inputs, [...path, 'vary'], report);
+  const [known, unknown] = [true, false].map((is) =>
+    Object.entries(rest).filter(([key]) => key in stratumShape === is),
+  );
+  unknownKeys(
+    unknown.map(([key]) => key),
+    [...Object.keys(stratumShape), 'vary'],
+    path,
+    report,
+  );
   const shape = mapping(stratumShape, 'a stratum: a mapping with name, method, points and vary');
-  const unknown = Object.keys(rest).filter((key) => !(key in stratumShape));
-  unknownKeys(unknown, [...Object.keys(stratumShape), 'vary'], path, report);
-  const known = isMapping
-    ? Object.fromEntries(Object.entries(rest).filter(([key]) => key in stratumShape))
-    : raw;
-  const found = check(shape, known, path, report);
-  if (!found) return [];
-  const name = found.name ?? `stratum-${i + 1}`;
-  return [{ path, name, ...withMethod(found), axes: new Map([...shared, ...own]) }];
+  const found = check(shape, isMapping ? Object.fromEntries(known) : raw, path, report);
+  const name = found?.name ?? `stratum-${i + 1}`;
+  const axes = new Map([...shared, ...own]);
+  return found && { path, name, ...withMethod(found), axes, varies: sizeOf(vary) > 0 };
 }
 
 function withMethod(found: { method?: Method; points?: number }): {
@@ -106,23 +115,18 @@ function requireNames(drafts: readonly Draft[], report: Report): void {
   }
 }
 
-/** What an axis must have depends on the samplers that use it. Returns the axes in use. */
-function checkUse(drafts: readonly Draft[], shared: Axes, report: Report): AxisNode[] {
+/** What an axis must have depends on the samplers that use it, as far as all are known. Returns the axes in use. */
+function checkUse(drafts: readonly Draft[], shared: Axes, complete: boolean, report: Report): AxisNode[] {
   const methods = new Map<AxisNode, Set<Method>>([...shared.values()].map((node) => [node, new Set()]));
   for (const { axes, method } of drafts) {
     for (const node of axes.values()) methods.set(node, (methods.get(node) ?? new Set()).add(method));
   }
-  for (const [node, by] of methods) checkAxis(node, by, drafts.length > 0, report);
+  if (complete) for (const [node, by] of methods) checkAxis(node, by, report);
   return [...methods].filter(([, by]) => by.size > 0).map(([node]) => node);
 }
 
-function checkAxis(
-  { axis, path, input }: AxisNode,
-  by: ReadonlySet<Method>,
-  sampled: boolean,
-  report: Report,
-): void {
-  if (sampled && by.size === 0) {
+function checkAxis({ axis, path, input }: AxisNode, by: ReadonlySet<Method>, report: Report): void {
+  if (by.size === 0) {
     report.key(path, {
       expected: 'an axis that some stratum uses',
       found: `${input.name}, which every stratum replaces`,
@@ -154,8 +158,9 @@ function finish(draft: Draft, report: Report): Stratum[] {
     axis ? [method === 'grid' ? axis : withoutSteps(axis)] : [],
   );
   vary.sort((a, b) => (a.input < b.input ? -1 : 1));
-  if (draft.axes.size === 0) {
-    report.value(path, { expected: 'at least one input under vary', found: 'none' });
+  if (!draft.varies) {
+    const at = path.length > 1 ? path : ['vary'];
+    report.value(at, { expected: 'at least one input under vary', found: 'none' });
   }
   if (method === 'sobol' && vary.length > SOBOL_DIMENSIONS) {
     report.value(path, {

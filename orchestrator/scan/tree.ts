@@ -13,7 +13,7 @@ interface Place {
 /** A YAML document as plain values that remember where they stand. */
 export interface Tree {
   readonly value: unknown;
-  placeOf(path: Path, offset: number): Place;
+  placeOf(path: Path, offset?: number): Place;
   placeOfKey(path: Path): Place;
   /** What the user typed for a value, e.g. 1e400 where the value is infinity. */
   sourceOf(path: Path): string;
@@ -146,7 +146,8 @@ class Builder {
   }
 
   /** Offset in the file of a character of a scalar, where the file shows the scalar as it is. */
-  private insideScalar(path: Path, offset: number): number | undefined {
+  private insideScalar(path: Path, offset: number | undefined): number | undefined {
+    if (offset === undefined) return undefined;
     const node = this.values.get(idOf(path));
     if (!isScalar(node) || typeof node.value !== 'string' || !node.range) return undefined;
     const at = this.source(node).indexOf(node.value);

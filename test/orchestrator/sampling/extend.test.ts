@@ -3,6 +3,7 @@ import { describe, expect, test } from 'vitest';
 import { extendPlan } from '../../../orchestrator/sampling/extend.js';
 import { gridValues } from '../../../orchestrator/sampling/grid.js';
 import { samplerOf } from '../../../orchestrator/sampling/sampler.js';
+import type { Wider } from '../../../orchestrator/sampling/widen.js';
 import type { Axis, Plan, Stratum } from '../../../orchestrator/scan/plan.js';
 import { planOf } from './plan-of.js';
 
@@ -175,7 +176,7 @@ vary:
     });
     fc.assert(
       fc.property(wider, fc.integer({ min: 0, max: 40 }), ({ Mt, cutoff, list }, more) => {
-        const steps = [
+        const steps: Record<string, Wider>[] = [
           { Mt: { range: Mt }, cutoff: { range: [10 ** cutoff[0], 10 ** cutoff[1]] as const } },
           {
             Mt: { range: [Mt[0] - more, Mt[1] + more + 1] as const },
