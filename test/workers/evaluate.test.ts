@@ -21,16 +21,16 @@ function part({ count, values }: PointsBlock, first: number, size: number): Poin
 }
 
 describe('a point does not depend on its company', () => {
-  const points = spread(150, WIDE);
+  const points = spread(70, WIDE);
   const task = smTask(VARIED);
   const expected = createEvaluator(task).evaluate(points);
 
-  it.each([1, 2, 7, 64, 150, 1000])('blocks of %i points give the same bits', (block) => {
+  it.each([1, 7, 64, 1000])('blocks of %i points give the same bits', (block) => {
     const found = createEvaluator(task, block).evaluate(points);
     for (let i = 0; i < points.count; i++) expect(row(found, i)).toEqual(row(expected, i));
   });
 
-  it.each([1, 13, 100])('chunks of %i points give the same bits', (size) => {
+  it.each([1, 13, 50])('chunks of %i points give the same bits', (size) => {
     const evaluator = createEvaluator(task);
     for (let first = 0; first < points.count; first += size) {
       const chunk = part(points, first, Math.min(size, points.count - first));
@@ -56,7 +56,7 @@ describe('a point does not depend on its company', () => {
 describe('every point of the domain has a result', () => {
   it('finite or absent with a reason, and none fails', () => {
     const task = smTask(VARIED);
-    const points = spread(3000, WIDE);
+    const points = spread(600, WIDE);
     const result = createEvaluator(task).evaluate(points);
     expect([...new Set(result.failures)]).toEqual([0]);
     const specs = sm.modules(SETTINGS, {}).flatMap((module) => module.gives);

@@ -72,11 +72,11 @@ function trace(
   first.evaluate(block);
   second.evaluate(block);
   const m2 = columns.get('m2AtStart')![0];
-  const y = new Float64Array(STATE_SIZE);
+  const trajectory = trajectories.of(0);
   return scales.map((scale) => {
-    if (block.failure[0] !== 0) y.fill(NaN);
-    else trajectories.of(0).path.at(log(scale), y);
-    return reported(y, m2 * y[MASS]);
+    if (block.failure[0] === 0) trajectory.visit(log(scale));
+    else trajectory.y.fill(NaN);
+    return reported(trajectory.y, m2 * trajectory.y[MASS]);
   });
 }
 
