@@ -1,6 +1,5 @@
 #!/usr/bin/env node
 import { availableParallelism } from 'node:os';
-import { serve } from '../dashboard/serve.js';
 import { dashboardCommands } from './commands/for-dashboard.js';
 import { runProgram } from './terminal/program.js';
 
@@ -11,6 +10,9 @@ await runProgram(process.argv.slice(2), {
   redis: process.env.REDIS_URL || undefined,
   debug: Boolean(process.env.TRIGPOINT_DEBUG),
   cores: availableParallelism(),
-  serveDashboard: (questions, { port, host }) =>
-    serve({ questions, commands: dashboardCommands(questions) }, port, host),
+  async serveDashboard(questions, { port, host }) {
+    // Loaded only where it is wanted: most commands never open it.
+    const { serve } = await import('../dashboard/serve.js');
+    return serve({ questions, commands: dashboardCommands(questions) }, port, host);
+  },
 });

@@ -8,9 +8,8 @@ import { readScan } from '../scan/read-scan.js';
 import { taskOf } from '../scan/task.js';
 import type { CheckFacts } from './commands.js';
 
-const WARM_UP = 16;
-const MOST_MEASURED = 256;
-const ENOUGH_SECONDS = 0.5;
+const MOST_MEASURED = 1024;
+const ENOUGH_MS = 700;
 
 /** Validates a scan file, and estimates what it costs by evaluating a few of its own points. Writes nothing.
  *  @param workers the number of workers that the time is for
@@ -36,20 +35,19 @@ export function check(
   };
 }
 
+/** Blocks twice as large each time, until enough time went by. Only the last one counts: by then the engine has
+ *  compiled what is worth it. */
 function secondsPerPoint(plan: Plan, task: Task, points: number): { seconds: number; measured: number } {
   const evaluator = createEvaluator(task);
-  // The first points are slow: the engine has yet to see what is worth compiling.
-  evaluator.evaluate(spread(plan, Math.min(WARM_UP, points)));
-  let measured = 0;
-  let seconds = 0;
-  for (let count = 8; measured < MOST_MEASURED && seconds < ENOUGH_SECONDS; count *= 2) {
-    const block = spread(plan, Math.min(count, points));
+  const start = performance.now();
+  for (let count = Math.min(8, points); ; count = Math.min(2 * count, points)) {
+    const block = spread(plan, count);
     const began = performance.now();
     evaluator.evaluate(block);
-    seconds += (performance.now() - began) / 1000;
-    measured += block.count;
+    const now = performance.now();
+    const enough = now - start > ENOUGH_MS || count === points || count >= MOST_MEASURED;
+    if (enough) return { seconds: (now - began) / 1000 / count, measured: count };
   }
-  return { seconds: seconds / measured, measured };
 }
 
 /** Points of the plan, evenly spread over all of them. */

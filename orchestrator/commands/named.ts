@@ -24,8 +24,15 @@ function unknownName(name: string, known: readonly string[], where: string, kind
   const near = nearest(name, known);
   return new UserMistake({
     where,
-    expected: `${kind}: ${known.join(', ')}`,
+    expected: `${kind}: ${shortList(known)}`,
     found: JSON.stringify(name),
     hint: near === undefined ? undefined : `did you mean ${near}?`,
   });
+}
+
+const SHOWN = 24;
+
+function shortList(names: readonly string[]): string {
+  if (names.length <= SHOWN) return names.join(', ');
+  return `${names.slice(0, SHOWN).join(', ')} and ${names.length - SHOWN} more`;
 }

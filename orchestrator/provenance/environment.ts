@@ -21,7 +21,8 @@ export function environmentRecord(): Environment {
   };
 }
 
-function packageVersion(root: string): string {
+/** The version of this package. */
+export function packageVersion(root = packageRoot()): string {
   const description: unknown = JSON.parse(readFileSync(join(root, 'package.json'), 'utf8'));
   const version = (description as { version?: unknown }).version;
   return typeof version === 'string' ? version : 'unknown';

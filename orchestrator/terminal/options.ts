@@ -2,7 +2,6 @@ import { Option } from 'commander';
 import type { Command } from 'commander';
 import { wholeNumber } from '../commands/assignments.js';
 import type { OpenDispatcher } from '../dispatch/dispatcher.js';
-import { openRedis } from '../dispatch/redis.js';
 import { openThreads } from '../dispatch/threads.js';
 import { UserMistake } from '../mistakes.js';
 import { remark } from './session.js';
@@ -71,8 +70,10 @@ export function dispatcherFor(options: WorkerOptions, session: Session): OpenDis
   const redis = options.redis ?? (options.workers === undefined ? session.redis : undefined);
   if (redis === undefined) return openThreads(workerCount(options, session));
   checkRedisUrl(redis);
-  return (task, scope) => {
+  return async (task, scope) => {
     remark(session, 'chunks go to the fleet on Redis: trigpoint worker adds a worker to it');
+    // Loaded only where it is wanted: it takes longer than most commands.
+    const { openRedis } = await import('../dispatch/redis.js');
     return openRedis(redis)(task, scope);
   };
 }

@@ -1,5 +1,5 @@
 import { Command, CommanderError } from 'commander';
-import { environmentRecord } from '../provenance/environment.js';
+import { packageVersion } from '../provenance/environment.js';
 import { askCatalogue } from './ask-catalogue.js';
 import { askRuns } from './ask-runs.js';
 import { makeRuns } from './make-runs.js';
@@ -52,7 +52,7 @@ function programFor(session: Session): Command {
     .description(
       'Parameter scans of theories beyond the Standard Model that can be returned to, point by point.',
     )
-    .version(environmentRecord().trigpoint, '-V, --version', 'print the version')
+    .version(packageVersion(), '-V, --version', 'print the version')
     .helpCommand('help [command]', 'print the help of a command')
     .exitOverride()
     .configureOutput({

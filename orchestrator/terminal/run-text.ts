@@ -13,10 +13,10 @@ export function runText(run: RunAccount): string {
     count(run[name]),
     share(run[name], run.points),
   ]);
-  const done = run.points === run.wanted ? count(run.points) : `${count(run.points)} of ${count(run.wanted)}`;
+  const whole = run.points === run.wanted ? '' : `of ${count(run.wanted)} `;
   return [
     `run ${run.run}  ${run.title}  (${run.state})`,
-    table([], [['points', done, `in ${duration(run.seconds)}`], ...verdicts]),
+    table([], [['points', count(run.points), `${whole}in ${duration(run.seconds)}`], ...verdicts]),
     `digest  ${run.digest ?? 'none yet: the run is not finished'}`,
   ].join('\n');
 }

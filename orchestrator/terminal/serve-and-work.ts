@@ -1,5 +1,4 @@
 import type { Command } from 'commander';
-import { runFleetWorker } from '../dispatch/fleet-worker.js';
 import { UserMistake } from '../mistakes.js';
 import { asked, openDashboard } from './dashboard.js';
 import { checkRedisUrl, example, withJson, withPlace, withStore, workerCount } from './options.js';
@@ -41,6 +40,7 @@ function workerCommand(program: Command, session: Session): void {
     checkRedisUrl(url);
     const signal = session.stopSignal();
     const threads = workerCount(options, session);
+    const { runFleetWorker } = await import('../dispatch/fleet-worker.js');
     await runFleetWorker(url, { threads, signal, say: (line) => remark(session, line) });
     if (signal.aborted && signal.reason !== 130) throw new Stopped(Number(signal.reason));
   });
