@@ -32,19 +32,13 @@ function isOdd(y: number): boolean {
   return Math.floor(y) === y && Math.floor(half) !== half;
 }
 
-/** log2(x) as logHigh + logLow; logHigh has a short fraction. Written by the two functions below. */
+/** log2(x) as logHigh + logLow, written by `log2`; logHigh has a short fraction. */
 let logHigh = 0;
 let logLow = 0;
-
-const LARGEST_EXPONENT = 1024;
-const SMALLEST_EXPONENT = -1075;
-/** 2^64: beyond it every x but 1 overflows or underflows. */
-const LARGEST_POWER = 18446744073709551616;
 
 /** x > 0 and y finite. */
 function positive(x: number, y: number): number {
   if (x === 1) return 1;
-  if (Math.abs(y) > LARGEST_POWER) return x > 1 === y > 0 ? Infinity : 0;
   log2(x);
   const yHigh = withoutLowWord(y);
   return exp2(yHigh * logHigh, (y - yHigh) * logHigh + y * logLow);
@@ -118,15 +112,15 @@ const P2 = -2.77777777770155933842e-3;
 const P3 = 6.61375632143793436117e-5;
 const P4 = -1.6533902205465251539e-6;
 const P5 = 4.13813679705723846039e-8;
-/** -(1024 - log2(largest double + half a unit in the last place)). */
-const OVERFLOW_TAIL = 8.0085662595372944372e-17;
+/** Beyond these powers of two a result surely overflows or underflows; nearer to them, the last product decides. */
+const LARGEST_EXPONENT = 1024;
+const SMALLEST_EXPONENT = -1076;
 
 /** 2^(high + low). */
 function exp2(high: number, low: number): number {
   const sum = high + low;
-  if (sum > LARGEST_EXPONENT || (sum === LARGEST_EXPONENT && low + OVERFLOW_TAIL > sum - high))
-    return Infinity;
-  if (sum < SMALLEST_EXPONENT || (sum === SMALLEST_EXPONENT && low <= sum - high)) return 0;
+  if (sum > LARGEST_EXPONENT) return Infinity;
+  if (sum < SMALLEST_EXPONENT) return 0;
   const n = Math.floor(sum + 0.5);
   const rest = high - n;
   const t = withoutLowWord(low + rest);

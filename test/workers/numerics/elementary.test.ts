@@ -71,7 +71,22 @@ describe('special values', () => {
   });
 
   it('of pow agree with ECMA-262 for every pair of special arguments', () => {
-    const values = [0, 0.5, 1, 1.5, 2, 3, 2 ** 53, 2 ** 53 - 1, 1e300, Infinity, NaN, 5e-324, 1 + 2 ** -52];
+    const values = [
+      0,
+      0.5,
+      1,
+      1.5,
+      2,
+      3,
+      2 ** 53,
+      2 ** 53 - 1,
+      1e300,
+      Number.MAX_VALUE,
+      Infinity,
+      NaN,
+      5e-324,
+      1 + 2 ** -52,
+    ];
     for (const x of [...values, ...values.map((value) => -value)]) {
       for (const y of [...values, ...values.map((value) => -value)]) {
         const [ours, standard] = [pow(x, y), Math.pow(x, y)];
