@@ -8,7 +8,8 @@ import { STATE_SIZE } from './state.js';
 
 /** Where perturbation theory is given up: the running stops once g^2, y^2 or |lambda| passes this many times 4 pi. */
 export const CEILING = 4;
-/** Step tolerance below the wanted global error; the measured ratio of the two stays below 10 (test/workers/running). */
+/** Step tolerance below the wanted global error: over the whole domain the error then stays below the wanted one, and
+ *  below five times it where a coupling is about to blow up (test/workers/running). */
 const LOCAL_TO_GLOBAL = 20;
 /** Couplings near zero (lambda changes sign) need no better than this part of the tolerance, absolutely. */
 const ABSOLUTE = 0.01;

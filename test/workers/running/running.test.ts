@@ -1,6 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import { derivatives } from '../../../workers/running/derivatives.js';
+import { measure } from '../../../workers/running/perturbativity.js';
 import { running } from '../../../workers/running/running.js';
+import { interpolate } from '../../../workers/running/start-values.js';
 import { FIELD, STATE_SIZE } from '../../../workers/running/state.js';
 import { Trajectories, Trajectory } from '../../../workers/running/trajectory.js';
 import { blockOf, goldenPoints } from '../../golden/standard-model/points.js';
@@ -105,6 +107,39 @@ describe('the global error', () => {
       trajectory.visit(t0 + 0.64 * k);
       for (let i = 0; i < STATE_SIZE; i++) expect(distance(trajectory.y[i], y[i])).toBeLessThan(TOLERANCE);
     }
+  });
+});
+
+describe('the global error over the domain of the inputs', () => {
+  const f = derivatives(3);
+  const [found, exact] = [new Trajectory(f), new Trajectory(f)];
+  const at = { lambda: 0, yt: 0, g2: 0, gY: 0, g3: 0, m2: 0, valid: false };
+  const golden = (i: number, k: number): number => ((i + 1) * Math.sqrt(k)) % 1;
+
+  it.each([1e-7, 1e-9])('stays below the tolerance %s, or five times it close to a blow-up', (tolerance) => {
+    let [calm, wild] = [0, 0];
+    for (let i = 0; i < 200; i++) {
+      const Mt = 50 + 250 * golden(i, 2);
+      interpolate(Mt, 1 + 399 * golden(i, 3), 0.08 + 0.07 * golden(i, 5), 80.38, at);
+      const start = Float64Array.of(at.gY, at.g2, at.g3, at.yt, 0.0156, 0.01, at.lambda, 1, 0);
+      const end = Math.log(1e4) + 34.7 * golden(i, 7);
+      const status = found.run(Math.log(Mt), end, start, tolerance);
+      expect(exact.run(Math.log(Mt), end, start, 1e-12)).toBe(status);
+      if (status !== 'done') continue;
+      found.visit(end);
+      exact.visit(end);
+      const error = Math.max(...found.y.map((value, k) => distance(value, exact.y[k])));
+      let strongest = 0;
+      for (let k = 0; k < exact.count; k++) {
+        exact.look(k);
+        strongest = Math.max(strongest, measure(exact.y));
+      }
+      if (strongest < 0.5) calm = Math.max(calm, error);
+      else wild = Math.max(wild, error);
+    }
+    expect(calm).toBeGreaterThan(0);
+    expect(calm).toBeLessThan(tolerance);
+    expect(wild).toBeLessThan(5 * tolerance);
   });
 });
 
