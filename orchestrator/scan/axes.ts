@@ -1,5 +1,6 @@
 import type { InputSpec } from '../../workers/contract.js';
 import { check, unknownKeys } from './check.js';
+import { entriesOf, isMapping } from './entries.js';
 import type { Path } from './path.js';
 import { didYouMean, oneOf } from './phrases.js';
 import type { Axis } from './plan.js';
@@ -39,14 +40,6 @@ export function readAxes(
   return axes;
 }
 
-/** The entries of a mapping; none after complaining, or where there is nothing. */
-export function entriesOf(raw: unknown, expected: string, path: Path, report: Report): [string, unknown][] {
-  if (raw === undefined) return [];
-  if (typeof raw === 'object' && raw !== null && !Array.isArray(raw)) return Object.entries(raw);
-  report.value(path, { expected, found: report.describe(path, raw) });
-  return [];
-}
-
 export function knownInput(
   name: string,
   inputs: ReadonlyMap<string, InputSpec>,
@@ -72,7 +65,7 @@ function readAxis(raw: unknown, input: InputSpec, path: Path, report: Report): A
 }
 
 function kindOf(raw: unknown, path: Path, report: Report): Kind | undefined {
-  if (typeof raw !== 'object' || raw === null || Array.isArray(raw)) {
+  if (!isMapping(raw)) {
     const hint = typeof raw === 'number' ? 'a single value belongs under fix' : undefined;
     const pair = Array.isArray(raw) ? `write { range: ${JSON.stringify(raw).slice(0, 60)} }` : hint;
     const expected = 'a mapping with range, gaussian or list';

@@ -1,6 +1,6 @@
 import { compile, ExpressionError } from '../../workers/expressions/compile.js';
 import { RESERVED } from '../../workers/expressions/syntax.js';
-import { entriesOf } from './axes.js';
+import { entriesOf } from './entries.js';
 import { check, numberHint } from './check.js';
 import type { Path } from './path.js';
 import { didYouMean, quote } from './phrases.js';

@@ -1,5 +1,6 @@
 import type { InputSpec } from '../../workers/contract.js';
-import { entriesOf, knownInput } from './axes.js';
+import { knownInput } from './axes.js';
+import { entriesOf } from './entries.js';
 import type { Plan } from './plan.js';
 import type { Report } from './report.js';
 import type { Sampled } from './strata.js';

@@ -1,6 +1,6 @@
 import type { Constraint, ConstraintUse, Options, OptionSpec } from '../../workers/contract.js';
 import { check, unknownKeys } from './check.js';
-import { entriesOf } from './axes.js';
+import { entriesOf, isMapping } from './entries.js';
 import type { Path } from './path.js';
 import { didYouMean, quote } from './phrases.js';
 import type { Report } from './report.js';
@@ -54,7 +54,7 @@ function readUse(
   }
   const entries = entriesOf(raw ?? null, 'a name of a constraint or { name: options }', path, report);
   if (entries.length !== 1) {
-    if (entries.length > 1 || isEmptyMapping(raw))
+    if (isMapping(raw))
       report.value(path, { expected: 'one constraint an entry', found: report.describe(path, raw) });
     return undefined;
   }
@@ -63,10 +63,6 @@ function readUse(
   if (!constraint) unknownKeys([name], [...constraints.keys()], path, report);
   const read = constraint && readOptions(options, constraint.options, [...path, name], report);
   return read && { name, options: read };
-}
-
-function isEmptyMapping(raw: unknown): boolean {
-  return typeof raw === 'object' && raw !== null && !Array.isArray(raw) && Object.keys(raw).length === 0;
 }
 
 /** A constraint decides or is noted once: with other options it would be another run. */

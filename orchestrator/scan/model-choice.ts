@@ -1,5 +1,5 @@
 import type { Model, Options } from '../../workers/contract.js';
-import { entriesOf } from './axes.js';
+import { entriesOf, isMapping } from './entries.js';
 import { unknownKeys } from './check.js';
 import { readOptions } from './judging.js';
 import type { Path } from './path.js';
@@ -24,7 +24,7 @@ export function readModel(
     return undefined;
   }
   const entries = new Map(entriesOf(raw, 'a name or { name, options }', path, report));
-  if (entries.size === 0) return undefined;
+  if (!isMapping(raw)) return undefined;
   const known = ['name', 'options'];
   unknownKeys(
     [...entries.keys()].filter((key) => !known.includes(key)),

@@ -4,6 +4,7 @@ import { models } from '../../workers/models/catalogue.js';
 import { quantitiesOf } from '../../workers/quantities.js';
 import { check, unknownKeys } from './check.js';
 import { readDefinitions, type Vocabulary } from './definitions.js';
+import { isMapping } from './entries.js';
 import { readFixed } from './fixing.js';
 import { readJudging, type Judging } from './judging.js';
 import { needsOf, readKeep } from './keeping.js';
@@ -41,7 +42,7 @@ export function readScan(bytes: Uint8Array, file: string): { plan: Plan; text: s
 }
 
 function requireMapping(value: unknown, report: Report): Sections {
-  if (typeof value === 'object' && value !== null && !Array.isArray(value)) {
+  if (isMapping(value)) {
     return Object.fromEntries(Object.entries(value).filter(([, section]) => section !== null));
   }
   const found = value === undefined || value === null ? 'an empty file' : report.describe([], value);

@@ -3,6 +3,7 @@ import { gridSize } from '../sampling/grid.js';
 import { SOBOL_DIMENSIONS } from '../sampling/sobol.js';
 import { readAxes, type AxisNode } from './axes.js';
 import { check, mapping, unknownKeys } from './check.js';
+import { isMapping } from './entries.js';
 import type { Path } from './path.js';
 import { quote } from './phrases.js';
 import type { Axis, Method, Stratum } from './plan.js';
@@ -80,8 +81,7 @@ function readStratum(
   report: Report,
 ): Draft | undefined {
   const path = ['sample', i];
-  const isMapping = typeof raw === 'object' && raw !== null && !Array.isArray(raw);
-  const { vary, ...rest } = (isMapping ? raw : {}) as Record<string, unknown>;
+  const { vary, ...rest } = isMapping(raw) ? raw : {};
   const own = readAxes(vary, inputs, [...path, 'vary'], report);
   const [known, unknown] = [true, false].map((is) =>
     Object.entries(rest).filter(([key]) => key in stratumShape === is),
@@ -93,7 +93,7 @@ function readStratum(
     report,
   );
   const shape = mapping(stratumShape, 'a stratum: a mapping with name, method, points and vary');
-  const found = check(shape, isMapping ? Object.fromEntries(known) : raw, path, report);
+  const found = check(shape, isMapping(raw) ? Object.fromEntries(known) : raw, path, report);
   const name = found?.name ?? `stratum-${i + 1}`;
   const axes = new Map([...shared, ...own]);
   return found && { path, name, ...withMethod(found), axes, varies: sizeOf(vary) > 0 };

@@ -27,7 +27,7 @@ const DEEPEST = 12;
  *  @throws FileMistakes if the text is not YAML at all */
 export function readTree(text: string, file: string): Tree {
   const lines = new LineCounter();
-  const options = { prettyErrors: false, uniqueKeys: false, logLevel: 'silent' } as const;
+  const options = { prettyErrors: false, uniqueKeys: false, logLevel: 'error' } as const;
   const document = parseDocument(text, { lineCounter: lines, ...options });
   const place = (offset: number): Place => {
     const { line, col } = lines.linePos(Math.min(offset, text.length));
@@ -52,7 +52,7 @@ function syntaxComplaint(code: string, message: string, found: string): Complain
   if (code === 'MULTIPLE_DOCS')
     return { expected: 'one document', found: 'several, separated by "---" or "..."' };
   const first = found.split('\n')[0].trim();
-  const hint = message.replace(/^./, (letter) => letter.toLowerCase());
+  const hint = message.slice(0, 120).replace(/^./, (letter) => letter.toLowerCase());
   return { expected: 'valid YAML', found: first ? quote(first) : 'something else', hint };
 }
 
