@@ -15,14 +15,13 @@ export function connectForWriting(path: string): Connection {
   return opened(path, false, (db) => {
     db.pragma('busy_timeout = 5000');
     if (state === 'missing' || state === 'empty') db.pragma(`application_id = ${APPLICATION_ID}`);
-    else checkIdentity(path, db);
+    else checkSound(path, db);
     db.pragma('journal_mode = WAL');
     db.pragma('synchronous = FULL');
     // Blocks of 4096 points come by the megabyte: a checkpoint every 1000 pages would write much twice.
     db.pragma('wal_autocheckpoint = 4000');
     db.pragma('foreign_keys = ON');
     migrate(db);
-    checkTables(path, db);
   });
 }
 
@@ -34,9 +33,14 @@ export function connectForReading(path: string): Connection {
   }
   return opened(path, true, (db) => {
     db.pragma('busy_timeout = 5000');
-    checkIdentity(path, db);
-    checkTables(path, db);
+    checkSound(path, db);
   });
+}
+
+/** Before anything is written: a pragma would already change the file. */
+function checkSound(path: string, db: Connection): void {
+  checkIdentity(path, db);
+  checkTables(path, db);
 }
 
 function opened(path: string, readonly: boolean, prepare: (db: Connection) => void): Connection {
@@ -109,7 +113,11 @@ function migrate(db: Connection): void {
 
 /** Bounded: only the small tables, whatever the number of points; `verifyIntegrity` reads the large one. */
 function checkTables(path: string, db: Connection): void {
-  for (const table of ['lease', 'runs', 'segments', 'extents', 'attempts', 'chunks', 'unfinished']) {
+  const tables = db
+    .prepare<[], string>(`SELECT name FROM sqlite_schema WHERE type = 'table' AND name <> 'segment_columns'`)
+    .pluck()
+    .all();
+  for (const table of tables) {
     const finding = db.pragma(`quick_check('${table}')`, { simple: true });
     if (finding !== 'ok') {
       throw new Broken(
