@@ -23,6 +23,11 @@ export function denseComponent(slot: Slot, i: number, x: number): number {
   return y[i] + x * (dense[i] + z * outer);
 }
 
+/** The same for all components at once. */
+export function denseState(slot: Slot, x: number, out: Float64Array): void {
+  for (let i = 0; i < slot.y.length; i++) out[i] = denseComponent(slot, i, x);
+}
+
 /** Fills slot.dense for the step of length h from t that led to `after`; three evaluations. */
 export function prepareDense(
   f: Derivative,

@@ -1,4 +1,4 @@
-import { denseComponent, prepareDense } from './dop853-dense.js';
+import { denseComponent, denseState, prepareDense } from './dop853-dense.js';
 import { attempt, createScratch, createSlot, errorOf } from './dop853-step.js';
 import type { Derivative, Slot } from './dop853-step.js';
 
@@ -61,6 +61,7 @@ class Integrator implements Dop853 {
   evaluations = 0;
   private readonly slots: Slot[] = [];
   private readonly scratch;
+  private readonly nowhere;
   private boundaries = new Float64Array(64);
   private direction = 1;
 
@@ -69,6 +70,7 @@ class Integrator implements Dop853 {
     private readonly f: Derivative,
   ) {
     this.scratch = createScratch(n);
+    this.nowhere = new Float64Array(n).fill(NaN);
   }
 
   get times(): Float64Array {
@@ -88,12 +90,16 @@ class Integrator implements Dop853 {
   at(t: number, out: Float64Array): void {
     const step = this.stepAt(t);
     const x = this.fraction(step, t);
-    for (let i = 0; i < this.n; i++) out[i] = this.inside(step, i, x);
+    const knot = this.knot(step, x);
+    if (knot) for (let i = 0; i < this.n; i++) out[i] = knot[i];
+    else denseState(this.slots[step], x, out);
   }
 
   component(i: number, t: number): number {
     const step = this.stepAt(t);
-    return this.inside(step, i, this.fraction(step, t));
+    const x = this.fraction(step, t);
+    const knot = this.knot(step, x);
+    return knot ? knot[i] : denseComponent(this.slots[step], i, x);
   }
 
   private begin(t0: number, t1: number, y0: ArrayLike<number>, { rtol, atol }: Dop853Settings): void {
@@ -203,10 +209,10 @@ class Integrator implements Dop853 {
     return (t - start) / (end - start);
   }
 
-  private inside(step: number, i: number, x: number): number {
-    if (step < 0) return NaN;
-    if (x === 0) return this.slots[step].y[i];
-    return x === 1 ? this.slots[step + 1].y[i] : denseComponent(this.slots[step], i, x);
+  /** The state at an end of a step, which needs no polynomial, or outside all steps. */
+  private knot(step: number, x: number): Float64Array | undefined {
+    if (step < 0) return this.nowhere;
+    return x === 0 ? this.slots[step].y : x === 1 ? this.slots[step + 1].y : undefined;
   }
 }
 

@@ -15,7 +15,7 @@ const P5 = 4.13813679705723846039e-8;
 
 /** e^x from + - * / alone, so that it has the same bits everywhere.
  *  @returns  0 below -745.13, Infinity above 709.78, NaN for NaN
- *  Accuracy: below 1 unit in the last place (exp.test.ts)
+ *  Accuracy: below 1 unit in the last place (elementary.test.ts)
  *  Source:   fdlibm 5.3, e_exp.c, Sun Microsystems 1993: argument reduction x = k ln2 + r and a rational
  *            approximation of e^r; https://www.netlib.org/fdlibm/e_exp.c */
 export function exp(x: number): number {

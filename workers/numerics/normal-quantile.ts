@@ -3,7 +3,7 @@ import { log } from './log.js';
 /** The x below which a standard normal variable falls with probability p.
  *  @param p  0 to 1
  *  @returns  -Infinity at 0, Infinity at 1, NaN outside
- *  Accuracy: about 1 part in 10^15 (normal-quantile.test.ts)
+ *  Accuracy: about 1 part in 10^15 (elementary.test.ts)
  *  Source:   M. J. Wichura, Algorithm AS 241, routine PPND16, Applied Statistics 37 (1988) 477,
  *            doi:10.2307/2347330 */
 export function normalQuantile(p: number): number {

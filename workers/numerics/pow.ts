@@ -3,7 +3,7 @@ import { highWord, timesPowerOfTwo, withHighWord, withoutLowWord } from './words
 /** x to the power y from + - * / and sqrt alone, so that it has the same bits everywhere.
  *  @returns  special values as in ECMA-262, Number::exponentiate: pow(x, 0) = 1 even for NaN, pow(1, Infinity) = NaN,
  *            NaN for a negative x and a y that is not an integer
- *  Accuracy: below 1 unit in the last place (pow.test.ts); exact where the result is an integer below 2^53
+ *  Accuracy: below 1 unit in the last place (elementary.test.ts); exact where the result is an integer below 2^53
  *  Source:   fdlibm 5.3, e_pow.c, Sun Microsystems 1993: log2(x) and its product with y as sums of two doubles;
  *            https://www.netlib.org/fdlibm/e_pow.c. Its separate series for |y| > 2^31 is left out: there it is some
  *            hundreds of units off, the general way is not. */

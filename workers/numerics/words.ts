@@ -1,14 +1,14 @@
 /** The two 32-bit words of a float64, on machines of either byte order. */
 
 const double = new Float64Array(1);
-const words = new Uint32Array(double.buffer);
+const words = new Int32Array(double.buffer);
 const HIGH = new Uint8Array(new Uint32Array([1]).buffer)[0] === 1 ? 1 : 0;
 const LOW = 1 - HIGH;
 
 /** Sign, exponent and the upper 20 bits of the fraction, as a signed 32-bit integer. */
 export function highWord(x: number): number {
   double[0] = x;
-  return words[HIGH] | 0;
+  return words[HIGH];
 }
 
 /** x with its high word replaced. */
