@@ -11,15 +11,14 @@ export function latinHypercube(size: number, place: Place): Fractions {
   const jitter = uniform(place);
   return (first, count, out) => {
     jitter(first, count, out);
-    for (let i = 0; i < count; i++) {
-      const cell = cellOf(first + i);
-      const inside = cell + out[i];
-      out[i] = (inside < cell + 1 ? inside : beforeNext(cell)) / size;
-    }
+    for (let i = 0; i < count; i++) out[i] = placeInCell(cellOf(first + i), out[i], size);
   };
 }
 
-/** The largest double below cell + 1, where adding the jitter was rounded up. */
-function beforeNext(cell: number): number {
-  return (cell + 1) * (1 - 2 ** -53);
+/** A place within one of `size` equal cells of the unit interval; below 1 also in the last one, where adding could
+ *  round up.
+ *  @param inside how far into the cell, in the open unit interval */
+export function placeInCell(cell: number, inside: number, size: number): number {
+  const end = cell + 1;
+  return Math.min(cell + inside, end * (1 - Number.EPSILON / 2)) / size;
 }

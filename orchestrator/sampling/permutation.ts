@@ -10,8 +10,8 @@ const ROUNDS = 8;
 export function permutation(size: number, key: Key): (index: number) => number {
   const bits = Math.max(2, 32 - Math.clz32(size - 1));
   const rightBits = bits >>> 1;
-  const leftMask = 2 ** (bits - rightBits) - 1;
-  const rightMask = 2 ** rightBits - 1;
+  const leftMask = (1 << (bits - rightBits)) - 1;
+  const rightMask = (1 << rightBits) - 1;
   const once = (index: number): number => {
     let left = (index >>> rightBits) & leftMask;
     let right = index & rightMask;

@@ -1,6 +1,6 @@
 import fc from 'fast-check';
 import { describe, expect, test } from 'vitest';
-import { latinHypercube } from '../../../orchestrator/sampling/latin-hypercube.js';
+import { latinHypercube, placeInCell } from '../../../orchestrator/sampling/latin-hypercube.js';
 import { permutation } from '../../../orchestrator/sampling/permutation.js';
 import { placeOf, points } from './golden.js';
 
@@ -52,6 +52,15 @@ describe('the latin hypercube', () => {
       expect(out.every((u) => u > 0 && u < 1)).toBe(true);
     },
   );
+
+  test('stays below 1 in the last cell and above 0 in the first, however far into them', () => {
+    fc.assert(
+      fc.property(fc.integer({ min: 1, max: 100_000_000 }), (size) => {
+        const last = placeInCell(size - 1, 1 - 2 ** -53, size);
+        return last < 1 && last >= (size - 1) / size && placeInCell(0, 2 ** -53, size) > 0;
+      }),
+    );
+  });
 
   test('spreads differently in different inputs', () => {
     const n = 10_000;
