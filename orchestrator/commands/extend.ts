@@ -30,7 +30,7 @@ export interface ExtendRequest {
 
 /** A child run with every point of a run and more. What the parent has stored is shared, not computed again,
  *  as long as the code is the same. The same extension asked for again is resumed or shown. */
-export function extend(word: string, request: ExtendRequest, work: Work): Promise<ExtendFacts> {
+export async function extend(word: string, request: ExtendRequest, work: Work): Promise<ExtendFacts> {
   const change = readChange(request.points ?? [], request.vary ?? []);
   return withWriting(work.store, async (store) => {
     const parent = findRun(store, word);

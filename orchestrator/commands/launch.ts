@@ -18,7 +18,7 @@ export interface LaunchFacts extends RunAccount {
 
 /** Runs a scan file. A run with the same plan and the same code is resumed, or shown if it is finished.
  *  @throws FileMistakes before the store is touched */
-export function launch(scan: { bytes: Uint8Array; file: string }, work: Work): Promise<LaunchFacts> {
+export async function launch(scan: { bytes: Uint8Array; file: string }, work: Work): Promise<LaunchFacts> {
   const { plan, text } = readScan(scan.bytes, scan.file);
   const wanted = newRun(plan, { name: scan.file, text }, { relation: 'launch', parent: null });
   return withWriting(work.store, async (store) => {

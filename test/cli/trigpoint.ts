@@ -48,8 +48,8 @@ export function newFolder(): string {
 }
 
 export function start(words: readonly string[], { cwd = newFolder(), env = {} }: Place = {}): Running {
-  const { REDIS_URL: _, TRIGPOINT_DEBUG: __, ...inherited } = process.env;
-  const child = spawn(process.execPath, [program, ...words], { cwd, env: { ...inherited, ...env } });
+  const clean = { ...process.env, REDIS_URL: '', TRIGPOINT_DEBUG: '' };
+  const child = spawn(process.execPath, [program, ...words], { cwd, env: { ...clean, ...env } });
   alive.add(child);
   const text = { out: '', err: '' };
   const listeners = new Set<() => void>();
