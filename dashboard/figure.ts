@@ -1,17 +1,19 @@
 import type { AsyncQuestions, DensityGrid, FilteredCounts } from '../orchestrator/store/reading.js';
-import type { ColumnRecord } from '../orchestrator/store/records.js';
+import type { ColumnRecord, RunRecord } from '../orchestrator/store/records.js';
 import { classColours, isClass } from './columns.js';
 import { countText } from './numbers.js';
 import { padded, type Axis } from './plots/axis.js';
-import { COUNTS_LABEL, densityPlot } from './plots/density.js';
+import { COUNTS_LABEL, densityPlot, densityRaster } from './plots/density.js';
 import type { Setting } from './plots/drawing.js';
-import { regionsPlot } from './plots/regions.js';
+import { regionsPlot, regionsRaster } from './plots/regions.js';
 import { scatterPlot, type Colouring } from './plots/scatter.js';
-import { parseSymbol, symbolText, unitLabel } from './symbols.js';
+import { html, type Safe } from './html.js';
+import { parseSymbol, symbolHtml, symbolText, unitLabel } from './symbols.js';
+import { plannedRange } from './usual-view.js';
 import type { RunView, ScaleChoice } from './view.js';
 
 export interface FigureRequest {
-  readonly run: number;
+  readonly run: RunRecord;
   /** The whole filter. */
   readonly where: string;
   readonly view: RunView;
@@ -21,8 +23,9 @@ export interface FigureRequest {
 
 /** A figure ready to be drawn at any size, with what there is to say about it. */
 export interface Figure {
-  /** What the figure shows, in words. */
+  /** What the figure shows, in words, and the same with proper symbols. */
   readonly summary: string;
+  readonly caption: Safe;
   /** How it was drawn: kind, how many points are missing from it. */
   readonly remark: string;
   draw(setting: Setting): string;
@@ -47,22 +50,31 @@ export async function figureOf(
 
 async function asPoints(
   questions: AsyncQuestions,
-  { run, where, view, counts }: FigureRequest,
+  request: FigureRequest,
   x: ColumnRecord,
   y: ColumnRecord,
   colour: ColumnRecord | undefined,
 ): Promise<Figure> {
-  const found = await questions.scatter({ run, where }, x.name, y.name, colour?.name ?? null, MOST_POINTS);
+  const { run, where, view, counts } = request;
+  const found = await questions.scatter(
+    { run: run.id, where },
+    x.name,
+    y.name,
+    colour?.name ?? null,
+    MOST_POINTS,
+  );
+  const [xScale, yScale] = [scaleOf(x, view.xScale), scaleOf(y, view.yScale)];
   const axes = {
-    x: axisOf(x, rangeOf(found.x, scaleOf(x, view.xScale)), scaleOf(x, view.xScale)),
-    y: axisOf(y, rangeOf(found.y, scaleOf(y, view.yScale)), scaleOf(y, view.yScale)),
+    x: axisOf(x, chosenRange(request, 'x', x) ?? rangeOf(found.x, xScale), xScale),
+    y: axisOf(y, chosenRange(request, 'y', y) ?? rangeOf(found.y, yScale), yScale),
   };
   const spec = { ...axes, xs: found.x, ys: found.y, colour: colouring(colour, found.colour) };
   const drawn = found.x.filter((value, i) => placed(axes.x, value) && placed(axes.y, found.y[i])).length;
   const some =
-    found.x.length < counts.points ? `every ${nth(counts.points / found.x.length)} point in order; ` : '';
+    found.x.length < counts.points ? `Every ${nth(counts.points / found.x.length)} point in order; ` : '';
   return {
-    summary: `Points of ${nameOf(y)} against ${nameOf(x)}${colourPhrase(colour)}.`,
+    summary: `Points in the plane of ${nameOf(y)} against ${nameOf(x)}${colourPhrase(colour)}.`,
+    caption: captionOf('Points', x, y, colour),
     remark: `${some}${countText(drawn)} points drawn${absentPhrase(found.x.length - drawn)}`,
     draw: (setting) => scatterPlot(setting, spec),
   };
@@ -70,16 +82,17 @@ async function asPoints(
 
 async function asCells(
   questions: AsyncQuestions,
-  { run, where, view, counts }: FigureRequest,
+  request: FigureRequest,
   x: ColumnRecord,
   y: ColumnRecord,
   colour: ColumnRecord | undefined,
 ): Promise<Figure> {
+  const { run, where, view, counts } = request;
   const [xScale, yScale] = [scaleOf(x, view.xScale), scaleOf(y, view.yScale)];
   const grid = await questions.density(
-    { run, where },
-    { column: x.name, scale: xScale, range: null },
-    { column: y.name, scale: yScale, range: null },
+    { run: run.id, where },
+    { column: x.name, scale: xScale, range: chosenRange(request, 'x', x) },
+    { column: y.name, scale: yScale, range: chosenRange(request, 'y', y) },
     colour?.name ?? null,
     cellsFor(counts.points),
   );
@@ -91,33 +104,57 @@ async function asCells(
   const cells = `${grid.x.bins} × ${grid.y.bins} cells`;
   return {
     summary: `${kind} in the plane of ${nameOf(y)} against ${nameOf(x)}${colourPhrase(colour)}.${classPhrase(grid)}`,
-    remark: `${cells}${grid.classes ? ', smoothed over neighbours' : ''}${absentPhrase(grid.undrawn)}`,
-    draw: (setting) => drawGrid(setting, axes, grid, colour),
+    caption: captionOf(kind, x, y, colour),
+    remark: `${cells}${grid.classes ? ', colours mixed by share and smoothed over neighbours' : ''}${absentPhrase(grid.undrawn)}`,
+    draw: gridDrawing(axes, grid, colour),
   };
 }
 
-function drawGrid(
-  setting: Setting,
+/** The raster is painted once, whatever sizes are drawn. */
+function gridDrawing(
   axes: { x: Axis; y: Axis },
   grid: DensityGrid,
   colour: ColumnRecord | undefined,
-): string {
+): (setting: Setting) => string {
   const size = { columns: grid.x.bins, rows: grid.y.bins };
   if (grid.classes && colour) {
-    const { labels, counts } = grid.classes;
-    return regionsPlot(setting, { ...axes, ...size, labels, counts, colours: classColours(colour) });
+    const spec = { ...axes, ...size, ...grid.classes, colours: classColours(colour) };
+    const raster = regionsRaster(spec);
+    return (setting) => regionsPlot(setting, spec, raster);
   }
-  const means = grid.mean !== undefined && colour !== undefined;
-  return densityPlot(setting, {
-    ...axes,
-    ...size,
-    values: means ? (grid.mean ?? grid.counts) : grid.counts,
-    kind: means ? 'mean' : 'counts',
-    label: means ? parseSymbol(colour.symbol) : COUNTS_LABEL,
-    unit: means ? unitLabel(colour.unit) : [],
-    scale: means && colour.logarithmic ? 'log' : 'linear',
-    diverging: means && colour.kind === 'margin',
-  });
+  const spec = { ...axes, ...size, ...densityOf(grid, colour) };
+  const raster = densityRaster(spec);
+  return (setting) => densityPlot(setting, spec, raster);
+}
+
+function densityOf(grid: DensityGrid, colour: ColumnRecord | undefined) {
+  if (!grid.mean || !colour) {
+    const counts = { values: grid.counts, kind: 'counts', label: COUNTS_LABEL, unit: [] } as const;
+    return { ...counts, scale: 'linear', diverging: false } as const;
+  }
+  return { values: grid.mean, kind: 'mean', ...rampOf(colour) } as const;
+}
+
+function rampOf(column: ColumnRecord) {
+  return {
+    label: parseSymbol(column.symbol),
+    unit: unitLabel(column.unit),
+    scale: column.logarithmic ? 'log' : 'linear',
+    diverging: column.kind === 'margin',
+  } as const;
+}
+
+/** The range that was asked for. Else the whole range of the plan, so that axes stay where they are while verdicts
+ *  are filtered; but the range of the data for what the filter itself narrows. */
+function chosenRange(
+  request: FigureRequest,
+  axis: 'x' | 'y',
+  column: ColumnRecord,
+): readonly [number, number] | null {
+  const [from, to] = request.view[`${axis}Range`];
+  if (from !== '') return [Number(from), Number(to)];
+  const narrowed = new RegExp(`\\b(${column.name}|stratum|index)\\b`).test(request.where);
+  return column.kind === 'input' && !narrowed ? plannedRange(request.run, column.name) : null;
 }
 
 function colouring(column: ColumnRecord | undefined, values: Float64Array | null): Colouring {
@@ -125,14 +162,7 @@ function colouring(column: ColumnRecord | undefined, values: Float64Array | null
   if (isClass(column)) {
     return { kind: 'classes', values, labels: column.labels ?? [], colours: classColours(column) };
   }
-  return {
-    kind: 'ramp',
-    values,
-    label: parseSymbol(column.symbol),
-    unit: unitLabel(column.unit),
-    scale: column.logarithmic ? 'log' : 'linear',
-    diverging: column.kind === 'margin',
-  };
+  return { kind: 'ramp', values, ...rampOf(column) };
 }
 
 function scaleOf(column: ColumnRecord, choice: ScaleChoice): 'linear' | 'log' {
@@ -166,9 +196,9 @@ function rangeOf(values: Float64Array, scale: 'linear' | 'log'): readonly [numbe
   return padded(low, high, scale);
 }
 
-/** Some four points a cell: fewer would show noise, more would blur edges. */
+/** Some three points a cell: fewer would show noise, more would blur edges. */
 function cellsFor(points: number): readonly [number, number] {
-  const across = Math.round(Math.min(160, Math.max(16, Math.sqrt((points / 4) * 1.3))));
+  const across = Math.round(Math.min(160, Math.max(16, Math.sqrt((points / 3) * 1.3))));
   return [across, Math.round(across / 1.3)];
 }
 
@@ -179,6 +209,16 @@ function placed(axis: Axis, value: number): boolean {
 function nameOf(column: ColumnRecord): string {
   return `${symbolText(column.symbol)} (${column.meaning})`;
 }
+
+function captionOf(kind: string, x: ColumnRecord, y: ColumnRecord, colour: ColumnRecord | undefined): Safe {
+  const name = (column: ColumnRecord): Safe =>
+    html`${symbolHtml(column.symbol)}${NAMED.has(column.kind) && html`, ${column.meaning}`}`;
+  return html`${kind} in the plane of ${name(y)}, against
+  ${name(x)}${colour && html`; colour: ${name(colour)}`}.`;
+}
+
+/** Kinds of columns whose symbol does not say what they are. */
+const NAMED = new Set<ColumnRecord['kind']>(['input', 'definition', 'quantity']);
 
 function colourPhrase(colour: ColumnRecord | undefined): string {
   return colour ? `, coloured by ${nameOf(colour)}` : '';

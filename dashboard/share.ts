@@ -39,6 +39,11 @@ export function shareText(part: number, whole: number): string {
   return `${(100 * interval.share).toFixed(digitsFor(halfWidth(interval)))} %`;
 }
 
+/** An exact part of a whole: "85.4 %". */
+export function percentText(part: number, whole: number): string {
+  return whole > 0 ? `${((100 * part) / whole).toFixed(1)} %` : '–';
+}
+
 function halfWidth({ low, high }: ShareInterval): number {
   return (high - low) / 2;
 }

@@ -52,6 +52,7 @@ function readRun(reader: Reader, style: Style): Span[] {
     } else if (character === '\\') spans.push(...readCommand(reader, style));
     else if (character === '{') spans.push(...readGroup(reader, style));
     else if (character === '~') spans.push(span('\u00a0', style, false));
+    else if (character === '-' && style.upright && betweenLetters(reader)) spans.push(upright('-', style));
     else if (character !== ' ' || style.upright) spans.push(span(character, style, isLetter(character)));
   }
   return spans;
@@ -87,6 +88,15 @@ function readCommand(reader: Reader, style: Style): Span[] {
   if (name in GREEK) return [span(GREEK[name], style, name[0] === name[0].toLowerCase())];
   if (name in SIGNS) return [span(SIGNS[name], style, false)];
   return [span(name, style, false)];
+}
+
+/** A hyphen in a word is no minus sign. */
+function betweenLetters({ text, at }: Reader): boolean {
+  return isLetter(text[at - 2] ?? '') && isLetter(text[at] ?? '');
+}
+
+function upright(text: string, style: Style): Span {
+  return { text, italic: false, level: style.level };
 }
 
 function span(text: string, style: Style, italic: boolean): Span {

@@ -6,7 +6,7 @@ import type { RunView } from './view.js';
 type Plan = CheckFacts['plan'];
 
 /** What a run page shows before anything is chosen: the two inputs that are varied most widely against each other,
- *  coloured by the first class the model gives, or by verdict. */
+ *  coloured by the class with the most to tell apart, or by verdict. */
 export function usualView(
   run: RunRecord,
   columns: readonly ColumnRecord[],
@@ -16,13 +16,15 @@ export function usualView(
     .filter((column) => column.kind === 'quantity' && !isClass(column))
     .map((one) => one.name);
   const [x, y] = [...varied, ...spare, 'index', 'stratum'];
-  const named = columns.filter((column) => column.kind === 'quantity' && isClass(column));
-  const numbers = columns.filter((column) => column.kind === 'quantity' && !isClass(column)).slice(0, 3);
+  const named = columns
+    .filter((column) => column.kind === 'quantity' && isClass(column))
+    .sort((a, b) => (b.labels?.length ?? 0) - (a.labels?.length ?? 0));
+  const margins = columns.filter((column) => column.kind === 'margin').slice(0, 3);
   return {
     x,
     y,
     colour: named[0]?.name ?? 'verdict',
-    columns: ['verdict', ...varied, ...named.map((one) => one.name), ...numbers.map((one) => one.name)],
+    columns: ['verdict', ...varied, ...named.map((one) => one.name), ...margins.map((one) => one.name)],
   };
 }
 
@@ -35,4 +37,14 @@ export function variedInputs(run: RunRecord): readonly string[] {
   }
   const names = [...ranged.keys()].sort();
   return [...names.filter((name) => ranged.get(name)), ...names.filter((name) => !ranged.get(name))];
+}
+
+/** The range a plan gives an input, over all strata; null for what is no varied range. */
+export function plannedRange(run: RunRecord, input: string): readonly [number, number] | null {
+  const plan = JSON.parse(run.plan) as Plan;
+  const ranges = plan.strata
+    .flatMap((stratum) => stratum.vary)
+    .flatMap((axis) => (axis.input === input && axis.kind === 'range' ? [axis] : []));
+  if (ranges.length === 0) return null;
+  return [Math.min(...ranges.map((axis) => axis.from)), Math.max(...ranges.map((axis) => axis.to))];
 }

@@ -12,6 +12,9 @@ export interface RunView {
   readonly y: string;
   readonly xScale: ScaleChoice;
   readonly yScale: ScaleChoice;
+  /** Ends of the axes as they were typed; both empty for what the data ask for. */
+  readonly xRange: readonly [string, string];
+  readonly yRange: readonly [string, string];
   /** A column, or empty for the number of points. */
   readonly colour: string;
   readonly drawing: DrawingChoice;
@@ -57,8 +60,8 @@ export function readView(
     report({ field, expected: 'the name of a column of this run', found: quoted(asked) });
     return fallback;
   };
-  const choice = <T extends string>(field: keyof RunView, name: string, allowed: readonly T[]): T => {
-    const asked = query.get(name) ?? allowed[0];
+  const choice = <T extends string>(field: keyof RunView, allowed: readonly T[]): T => {
+    const asked = query.get(field) ?? allowed[0];
     const found = allowed.find((one) => one === asked);
     if (found === undefined)
       report({ field, expected: `one of ${allowed.join(', ')}`, found: quoted(asked) });
@@ -71,10 +74,12 @@ export function readView(
     ranges: readRanges(query, names, report),
     x: column('x', usual.x),
     y: column('y', usual.y),
-    xScale: choice('xScale', 'xScale', SCALES),
-    yScale: choice('yScale', 'yScale', SCALES),
+    xScale: choice('xScale', SCALES),
+    yScale: choice('yScale', SCALES),
+    xRange: readAxisRange(query, 'x', report),
+    yRange: readAxisRange(query, 'y', report),
     colour: column('colour', usual.colour),
-    drawing: choice('drawing', 'drawing', DRAWINGS),
+    drawing: choice('drawing', DRAWINGS),
     columns: readColumns(query, names, usual.columns, report),
     page: readPage(query, report),
   };
@@ -103,6 +108,11 @@ export function viewQuery(view: RunView, change: Partial<RunView> = {}): string 
   query.set('colour', next.colour);
   for (const name of ['xScale', 'yScale', 'drawing'] as const)
     if (next[name] !== 'auto') query.set(name, next[name]);
+  for (const axis of ['x', 'y'] as const) {
+    const [from, to] = next[`${axis}Range`];
+    if (from !== '') query.set(`${axis}From`, from);
+    if (to !== '') query.set(`${axis}To`, to);
+  }
   for (const column of next.columns) query.append('column', column);
   if (next.page > 1) query.set('page', String(next.page));
   return `?${query.toString()}`;
@@ -173,6 +183,18 @@ function readRanges(
     }
     return range.from === '' && range.to === '' ? [] : [range];
   });
+}
+
+function readAxisRange(query: URLSearchParams, axis: 'x' | 'y', report: Report): readonly [string, string] {
+  const [from, to] = [(query.get(`${axis}From`) ?? '').trim(), (query.get(`${axis}To`) ?? '').trim()];
+  if (from === '' && to === '') return ['', ''];
+  if (isNumber(from) && isNumber(to) && Number(from) < Number(to)) return [from, to];
+  report({
+    field: `${axis}Range`,
+    expected: 'two numbers, the lower one first, or nothing',
+    found: `${quoted(from)} and ${quoted(to)}`,
+  });
+  return ['', ''];
 }
 
 function readColumns(

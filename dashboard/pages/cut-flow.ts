@@ -2,7 +2,7 @@ import type { Catalogue } from '../commands.js';
 import type { CutFlow } from '../../orchestrator/store/reading.js';
 import { html, type Safe } from '../html.js';
 import { countText } from '../numbers.js';
-import { shareText } from '../share.js';
+import { percentText } from '../share.js';
 import { shareBar } from './verdict-bar.js';
 
 /** What each constraint takes away, in the order of the plan. */
@@ -35,7 +35,7 @@ export function cutFlowSection(flow: CutFlow, catalogue: Catalogue | undefined):
             <td class="number">–</td>
             <td class="number">–</td>
             <td class="number">${countText(start)}</td>
-            <td class="with-bar">${shareText(start, flow.points)} ${shareBar(start, flow.points)}</td>
+            <td class="with-bar">${percentText(start, flow.points)} ${shareBar(start, flow.points)}</td>
           </tr>
           ${flow.rows.map(
             (row) =>
@@ -52,7 +52,7 @@ export function cutFlowSection(flow: CutFlow, catalogue: Catalogue | undefined):
                 <td class="with-bar">
                   ${
                     row.deciding &&
-                    html`${shareText(row.remaining, flow.points)} ${shareBar(row.remaining, flow.points)}`
+                    html`${percentText(row.remaining, flow.points)} ${shareBar(row.remaining, flow.points)}`
                   }
                 </td>
               </tr>`,

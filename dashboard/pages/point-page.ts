@@ -95,18 +95,17 @@ function evaluatedSections(parts: PointPageParts, evaluated: StoredPoint): Part 
   return [
     html`<section class="sheet" aria-labelledby="constraints-title">
       <h2 id="constraints-title">Constraints</h2>
-      ${constraintCards(evaluated.facts, constraints, catalogue)}
+      <div class="constraints">${constraintCards(evaluated.facts, constraints, catalogue)}</div>
     </section>`,
-    html`<div class="beside">
-      <section class="sheet" aria-labelledby="inputs-title">
-        <h2 id="inputs-title">Inputs</h2>
-        ${inputTable(evaluated.facts, catalogue, run)}
-      </section>
-      <section class="sheet" aria-labelledby="couplings-title">
-        <h2 id="couplings-title">Running couplings</h2>
-        ${couplingFigures(evaluated)} ${couplingTable(evaluated)}
-      </section>
-    </div>`,
+    html`<section class="sheet" aria-labelledby="couplings-title">
+      <h2 id="couplings-title">Running couplings</h2>
+      <div class="panels">${couplingFigures(evaluated)}</div>
+      ${couplingTable(evaluated)}
+    </section>`,
+    html`<section class="sheet" aria-labelledby="inputs-title">
+      <h2 id="inputs-title">Inputs</h2>
+      ${inputTable(evaluated.facts, catalogue, run)}
+    </section>`,
     html`<section class="sheet" aria-labelledby="quantities-title">
       <h2 id="quantities-title">Quantities</h2>
       ${quantityTables(evaluated.facts, catalogue)}

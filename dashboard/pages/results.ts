@@ -4,13 +4,15 @@ import type { Figure } from '../figure.js';
 import { html, raw, type Part, type Safe } from '../html.js';
 import { countText, digestShort } from '../numbers.js';
 import { NARROW, WIDE } from '../plots/drawing.js';
-import { shareText } from '../share.js';
+import { percentText } from '../share.js';
 import { viewQuery, wholeFilter, type RunView } from '../view.js';
 import { pointsTable } from './points-table.js';
 
 export interface ResultParts {
   readonly run: RunRecord;
   readonly view: RunView;
+  /** The filter in force: the whole one, or none where it is mistaken. */
+  readonly where: string;
   readonly counts: FilteredCounts;
   readonly figure: Figure | undefined;
   readonly page: PageOfPoints;
@@ -38,25 +40,25 @@ export function resultsSection(parts: ResultParts): Safe {
 }
 
 /** What belongs under a figure: which run, which points, how many. Used on the page and in the downloaded file. */
-export function captionLines({ run, view, counts, figure }: Omit<ResultParts, 'page'>): string[] {
-  const where = wholeFilter(view);
+export function captionLines({ run, where, counts, figure }: Omit<ResultParts, 'page' | 'view'>): string[] {
   return [
     `${figure?.summary ?? ''} ${figure?.remark ?? ''}.`,
-    `Trigpoint run ${run.id}, ${run.title}; ${run.digest ? `digest ${run.digest}` : `${run.state}, no digest yet`}.`,
+    `Trigpoint run ${run.id}, “${run.title}”; ${run.digest ? `digest ${run.digest}` : `${run.state}, no digest yet`}.`,
     `${where === '' ? 'All points' : `Points where ${where}`}: ${countText(counts.points)} of ${countText(counts.total)}, ` +
       `of them ${verdicts(counts)}.`,
   ];
 }
 
-function countsLine({ view, counts }: ResultParts): Safe {
-  const where = wholeFilter(view);
+function countsLine({ view, where, counts }: ResultParts): Safe {
+  const mistaken = where === '' && wholeFilter(view) !== '';
   return html`<div class="sheet counts">
     <p class="count">
       <strong>${countText(counts.points)}</strong> of ${countText(counts.total)} points
-      ${counts.total > 0 && html`<span class="under">${shareText(counts.points, counts.total)} of the run</span>`}
+      ${counts.total > 0 && html`<span class="under">${percentText(counts.points, counts.total)} of the run</span>`}
     </p>
     <p>${verdicts(counts)}</p>
     ${where !== '' && html`<p class="filter">Filter: <code>${where}</code></p>`}
+    ${mistaken && html`<p class="filter">The filter has a mistake, said beside its field, and is not applied.</p>`}
   </div>`;
 }
 
@@ -74,13 +76,13 @@ function figurePart(parts: ResultParts): Part {
       <p>${counts.total === 0 ? 'No point is stored yet.' : 'No point passes this filter.'}</p>
     </div>`;
   }
-  const [what, , how] = captionLines(parts);
+  const [, , how] = captionLines(parts);
   const setting = { summary: figure.summary, notes: [], place: 'page' } as const;
   return html`<figure class="sheet">
     <div class="wide-only">${raw(figure.draw({ ...setting, size: WIDE }))}</div>
     <div class="narrow-only">${raw(figure.draw({ ...setting, size: NARROW }))}</div>
     <figcaption>
-      <p>${what}</p>
+      <p>${figure.caption} ${figure.remark}.</p>
       <p>
         Run ${run.id},
         ${run.title}${
@@ -99,9 +101,9 @@ function figurePart(parts: ResultParts): Part {
   </figure>`;
 }
 
-function tablePart({ run, view, page, counts }: ResultParts): Part {
+function tablePart({ run, view, where, page, counts }: ResultParts): Part {
   if (counts.points === 0) return '';
-  const filter = new URLSearchParams({ where: wholeFilter(view) }).toString();
+  const filter = new URLSearchParams({ where }).toString();
   return html`<section class="sheet" aria-labelledby="points-title">
     <h2 id="points-title">Points</h2>
     ${pointsTable(run.id, page)} ${pager(run, view, counts)}

@@ -104,6 +104,8 @@ function whereField({ view, columns, mistakes }: FormParts): Safe {
 
 function axisFields({ view, columns, mistakes }: FormParts, field: 'x' | 'y', title: string): Safe {
   const scale = `${field}Scale` as const;
+  const range = `${field}Range` as const;
+  const [from, to] = view[range];
   return html`<div class="field pair">
     <div>
       <label for="${field}">${title}</label>
@@ -117,7 +119,25 @@ function axisFields({ view, columns, mistakes }: FormParts, field: 'x' | 'y', ti
         ${SCALES.map((one) => option(one, one === 'auto' ? 'as usual' : one, view[scale]))}
       </select>
     </div>
-    ${said(mistakes, field)} ${said(mistakes, scale)}
+    <div class="ends">
+      <label for="${field}From">from</label>
+      <input
+        id="${field}From"
+        name="${field}From"
+        value="${from}"
+        inputmode="decimal"
+        ${invalid(mistakes, range)}
+      />
+      <label for="${field}To">to</label>
+      <input
+        id="${field}To"
+        name="${field}To"
+        value="${to}"
+        inputmode="decimal"
+        ${invalid(mistakes, range)}
+      />
+    </div>
+    ${said(mistakes, field)} ${said(mistakes, scale)} ${said(mistakes, range)}
   </div>`;
 }
 

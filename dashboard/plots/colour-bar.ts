@@ -2,7 +2,7 @@ import { placing, ticksOf, type Axis } from './axis.js';
 import { INK, rampColour, type Ramp } from './colours.js';
 import { write, type Box, type Setting } from './drawing.js';
 import { axisTitle } from './frame.js';
-import { raster } from './raster.js';
+import { createRaster, rasterImages, type Raster } from './raster.js';
 import { element, round } from './svg.js';
 
 /** The scale of a colour: a bar at the right of the box with ticks, numbers and a label. */
@@ -17,7 +17,7 @@ export function colourBar(setting: Setting, box: Box, axis: Axis, ramp: Ramp): s
   const at = placing(axis, bar.bottom, bar.top);
   const ticks = ticksOf(axis, 6);
   return [
-    raster(setting, bar, 1, 128, (_x, y, light) => rampColour(ramp, light, y)),
+    rasterImages(setting, bar, RAMPS[ramp]),
     element('path', {
       class: 'axis',
       fill: 'none',
@@ -35,6 +35,11 @@ export function colourBar(setting: Setting, box: Box, axis: Axis, ramp: Ramp): s
     }),
   ].join('');
 }
+
+const RAMPS: Readonly<Record<Ramp, Raster>> = {
+  sequence: createRaster(1, 128, (light) => (_x, y) => rampColour('sequence', light, y)),
+  diverging: createRaster(1, 128, (light) => (_x, y) => rampColour('diverging', light, y)),
+};
 
 /** Where a value lies on the colour scale, from 0 to 1. */
 export function shareOf(axis: Axis, value: number): number {

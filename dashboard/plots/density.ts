@@ -1,10 +1,10 @@
-import { padded, type Axis } from './axis.js';
-import { colourBar, shareOf } from './colour-bar.js';
+import { padded, placing, type Axis } from './axis.js';
+import { colourBar } from './colour-bar.js';
 import { rampColour, type Ramp } from './colours.js';
 import { drawing, type Setting } from './drawing.js';
 import { boxOf, frame } from './frame.js';
 import { upright, type Label } from './label.js';
-import { raster } from './raster.js';
+import { createRaster, rasterImages, type Raster } from './raster.js';
 
 /** Values on a grid over the plane, row by row from low y; the axes end where the grid ends. */
 export interface DensitySpec {
@@ -23,25 +23,42 @@ export interface DensitySpec {
   readonly diverging: boolean;
 }
 
+/** The cells in their colours. */
+export function densityRaster(spec: DensitySpec): Raster {
+  const ramp = rampOf(spec);
+  const place = placing(colourAxis(spec), 0, STEPS - 1);
+  const steps = Int16Array.from(spec.values, (value) => {
+    const bare = Number.isNaN(value) || (spec.kind === 'counts' && value === 0);
+    return bare ? -1 : Math.min(STEPS - 1, Math.max(0, Math.round(place(value))));
+  });
+  return createRaster(spec.columns * ENLARGED, spec.rows * ENLARGED, (light) => {
+    const colours = Array.from({ length: STEPS }, (_, i) => rampColour(ramp, light, i / (STEPS - 1)));
+    return (x, y) => {
+      const step = steps[cellAt(spec, x, y)];
+      return step < 0 ? null : colours[step];
+    };
+  });
+}
+
 /** A raster of counts or means with its colour bar. */
-export function densityPlot(setting: Setting, spec: DensitySpec): string {
+export function densityPlot(setting: Setting, spec: DensitySpec, raster = densityRaster(spec)): string {
   const box = boxOf(setting.size, spec.y, { legend: 0, bar: true });
-  const ramp: Ramp = spec.diverging ? 'diverging' : 'sequence';
-  const colour = colourAxis(spec);
   return drawing(
     setting,
-    raster(setting, box, spec.columns * ENLARGED, spec.rows * ENLARGED, (x, y, light) => {
-      const value = spec.values[cellAt(spec, x, y)];
-      const bare = Number.isNaN(value) || (spec.kind === 'counts' && value === 0);
-      return bare ? null : rampColour(ramp, light, shareOf(colour, value));
-    }),
-    colourBar(setting, box, colour, ramp),
+    rasterImages(setting, box, raster),
+    colourBar(setting, box, colourAxis(spec), rampOf(spec)),
     frame(setting.size, box, spec.x, spec.y),
   );
 }
 
 /** Cells are enlarged here rather than by the viewer, so that every program shows them with sharp edges. */
 const ENLARGED = 3;
+/** Colours of a ramp that a raster tells apart. */
+const STEPS = 256;
+
+function rampOf(spec: DensitySpec): Ramp {
+  return spec.diverging ? 'diverging' : 'sequence';
+}
 
 function cellAt(spec: DensitySpec, x: number, y: number): number {
   const column = Math.min(spec.columns - 1, Math.floor(x * spec.columns));

@@ -1,9 +1,9 @@
 import type { Axis } from './axis.js';
-import { blend, CLASS_COLOURS, parseHex, type Light, type Rgb } from './colours.js';
+import { blend, CLASS_COLOURS, parseHex, type Rgb } from './colours.js';
 import { drawing, type Setting } from './drawing.js';
 import { boxOf, frame } from './frame.js';
 import { legend } from './legend.js';
-import { raster } from './raster.js';
+import { createRaster, rasterImages, type Raster } from './raster.js';
 
 export interface RegionsSpec {
   readonly x: Axis;
@@ -17,45 +17,59 @@ export interface RegionsSpec {
   readonly counts: Float64Array;
 }
 
-/** The plane coloured by class. Where a cell holds several classes the colours mix by their shares, so that an
- *  edge is as soft as the data make it. Shares are smoothed over neighbouring cells and drawn between centres. */
-export function regionsPlot(setting: Setting, spec: RegionsSpec): string {
-  const present = spec.labels.map((_, index) => index).filter((index) => classTotal(spec, index) > 0);
+/** The plane in the colours of its classes. Where a cell holds several classes the colours mix by their shares, so
+ *  that an edge is as soft as the data make it. Shares are smoothed over neighbouring cells and drawn between cell
+ *  centres. */
+export function regionsRaster(spec: RegionsSpec): Raster {
+  const present = presentIn(spec);
+  const totals = cellTotals(spec);
+  const smooth = present.map((index) => smoothed(spec, index, totals));
+  return createRaster(spec.columns * ENLARGED, spec.rows * ENLARGED, (light) => {
+    const all = CLASS_COLOURS[light];
+    const colours = present.map((index) => parseHex(all[spec.colours[index] % all.length]));
+    return (x, y) => mixture(betweenCells(spec, x, y), smooth, colours);
+  });
+}
+
+/** The regions with a legend of the classes that occur. */
+export function regionsPlot(setting: Setting, spec: RegionsSpec, raster = regionsRaster(spec)): string {
   const draft = boxOf(setting.size, spec.y, { legend: 0, bar: false });
-  const key = legend(
-    setting.size,
-    draft.left,
-    present.map((index) => ({ name: spec.labels[index], colour: spec.colours[index] })),
-  );
+  const entries = presentIn(spec).map((index) => ({ name: spec.labels[index], colour: spec.colours[index] }));
+  const key = legend(setting.size, draft.left, entries);
   const box = boxOf(setting.size, spec.y, { legend: key.height, bar: false });
-  const smooth = present.map((index) => smoothed(spec, index));
-  const palettes = { day: palette(spec, present, 'day'), night: palette(spec, present, 'night') };
   return drawing(
     setting,
-    raster(setting, box, spec.columns * ENLARGED, spec.rows * ENLARGED, (x, y, light) =>
-      mixture(spec, smooth, palettes[light], x, y),
-    ),
+    rasterImages(setting, box, raster),
     frame(setting.size, box, spec.x, spec.y),
     key.svg,
   );
 }
 
+/** Pixels a cell and direction, enough for smooth edges. */
 const ENLARGED = 4;
 
-function classTotal(spec: RegionsSpec, index: number): number {
+/** Classes with any point. */
+function presentIn(spec: RegionsSpec): readonly number[] {
   const cells = spec.columns * spec.rows;
-  return spec.counts.subarray(index * cells, (index + 1) * cells).reduce((sum, count) => sum + count, 0);
+  return spec.labels
+    .map((_, index) => index)
+    .filter((index) => spec.counts.subarray(index * cells, (index + 1) * cells).some((count) => count > 0));
 }
 
-function palette(spec: RegionsSpec, present: readonly number[], light: Light): readonly Rgb[] {
-  const colours = CLASS_COLOURS[light];
-  return present.map((index) => parseHex(colours[spec.colours[index] % colours.length]));
+/** Points of all classes in each cell. */
+function cellTotals(spec: RegionsSpec): Float64Array {
+  const cells = spec.columns * spec.rows;
+  const totals = new Float64Array(cells);
+  spec.counts.forEach((count, i) => (totals[i % cells] += count));
+  return totals;
 }
 
-/** Counts of one class after a 1-2-1 kernel in both directions. */
-function smoothed(spec: RegionsSpec, index: number): Float64Array {
+/** Shares of one class after a 1-2-1 kernel in both directions. Every cell with points counts alike, so that a cell
+ *  with very many does not spill over its neighbours. */
+function smoothed(spec: RegionsSpec, index: number, totals: Float64Array): Float64Array {
   const { columns, rows } = spec;
   const counts = spec.counts.subarray(index * columns * rows, (index + 1) * columns * rows);
+  const shares = counts.map((count, cell) => (totals[cell] > 0 ? count / totals[cell] : 0));
   const out = new Float64Array(columns * rows);
   for (let row = 0; row < rows; row++) {
     for (let column = 0; column < columns; column++) {
@@ -65,7 +79,7 @@ function smoothed(spec: RegionsSpec, index: number): Float64Array {
           const r = row + dy;
           const c = column + dx;
           if (r < 0 || c < 0 || r >= rows || c >= columns) continue;
-          sum += counts[r * columns + c] * (2 - Math.abs(dx)) * (2 - Math.abs(dy));
+          sum += shares[r * columns + c] * (2 - Math.abs(dx)) * (2 - Math.abs(dy));
         }
       }
       out[row * columns + column] = sum;
@@ -74,31 +88,37 @@ function smoothed(spec: RegionsSpec, index: number): Float64Array {
   return out;
 }
 
-function mixture(
-  spec: RegionsSpec,
-  smooth: readonly Float64Array[],
-  colours: readonly Rgb[],
-  x: number,
-  y: number,
-): Rgb | null {
-  const weights = smooth.map((grid) => between(spec, grid, x, y));
-  const total = weights.reduce((sum, weight) => sum + weight, 0);
-  if (total <= 0) return null;
-  const only = weights.findIndex((weight) => weight === total);
-  if (only >= 0) return colours[only];
-  return blend(weights.map((weight, i) => ({ colour: colours[i], weight })));
+/** The four cells around a place and their bilinear weights. */
+interface Between {
+  readonly cells: readonly [number, number, number, number];
+  readonly weights: readonly [number, number, number, number];
 }
 
-/** The grid between cell centres, bilinear. */
-function between(spec: RegionsSpec, grid: Float64Array, x: number, y: number): number {
-  const { columns, rows } = spec;
+function betweenCells({ columns, rows }: RegionsSpec, x: number, y: number): Between {
   const px = Math.min(columns - 1, Math.max(0, x * columns - 0.5));
   const py = Math.min(rows - 1, Math.max(0, y * rows - 0.5));
-  const c = Math.min(Math.max(0, columns - 2), Math.floor(px));
-  const r = Math.min(Math.max(0, rows - 2), Math.floor(py));
-  const c1 = Math.min(columns - 1, c + 1);
-  const r1 = Math.min(rows - 1, r + 1);
-  const low = grid[r * columns + c] * (1 - (px - c)) + grid[r * columns + c1] * (px - c);
-  const high = grid[r1 * columns + c] * (1 - (px - c)) + grid[r1 * columns + c1] * (px - c);
-  return low * (1 - (py - r)) + high * (py - r);
+  const [c, r] = [Math.floor(px), Math.floor(py)];
+  const [fx, fy] = [px - c, py - r];
+  const right = c + 1 < columns ? 1 : 0;
+  const up = r + 1 < rows ? columns : 0;
+  const cell = r * columns + c;
+  return {
+    cells: [cell, cell + right, cell + up, cell + up + right],
+    weights: [(1 - fx) * (1 - fy), fx * (1 - fy), (1 - fx) * fy, fx * fy],
+  };
+}
+
+function mixture(place: Between, smooth: readonly Float64Array[], colours: readonly Rgb[]): Rgb | null {
+  const { cells, weights } = place;
+  const shares = smooth.map(
+    (grid) =>
+      grid[cells[0]] * weights[0] +
+      grid[cells[1]] * weights[1] +
+      grid[cells[2]] * weights[2] +
+      grid[cells[3]] * weights[3],
+  );
+  const filled = shares.findIndex((share) => share > 0);
+  if (filled < 0) return null;
+  if (!shares.some((share, i) => share > 0 && i !== filled)) return colours[filled];
+  return blend(shares.map((weight, i) => ({ colour: colours[i], weight })));
 }

@@ -42,7 +42,7 @@ async function figureFile(request: Request, deps: DashboardDeps): Promise<string
   const figure = await figureFor(asked, counts, deps);
   if (!figure) throw new Refusal(404, 'There is nothing to draw', 'No point passes this filter.');
   const size = queryOf(request).get('size') === 'narrow' ? NARROW : WIDE;
-  const notes = captionLines({ run: asked.run, view: asked.view, counts, figure });
+  const notes = captionLines({ run: asked.run, where: asked.where, counts, figure });
   return figure.draw({ size, notes, summary: figure.summary, place: 'file' });
 }
 

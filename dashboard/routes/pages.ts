@@ -42,7 +42,7 @@ async function runPageOf(request: Request, deps: DashboardDeps): Promise<{ statu
   ]);
   const moment = { run, chunks, pointsPerSecond: null, secondsLeft: null, stillSeconds: 0 };
   const text = runPage({
-    ...{ run, columns, view, mistakes, counts, figure, page, cutFlow, chunks, catalogue, moment },
+    ...{ run, columns, view, where, mistakes, counts, figure, page, cutFlow, chunks, catalogue, moment },
     commands: reproduce,
   });
   return { status: mistakes.length > 0 ? 400 : 200, text };

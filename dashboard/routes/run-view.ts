@@ -46,5 +46,5 @@ export async function figureFor(
   counts: FilteredCounts,
   { questions }: DashboardDeps,
 ): Promise<Figure | undefined> {
-  return figureOf(questions, { run: run.id, where, view, columns, counts });
+  return figureOf(questions, { run, where, view, columns, counts });
 }

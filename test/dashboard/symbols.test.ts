@@ -14,6 +14,7 @@ describe('symbols', () => {
     ['\\lambda > 0', '<i>λ</i> &gt; 0'],
     ['\\frac{a}{b+c}', '<i>a</i>/(<i>b</i> + <i>c</i>)'],
     ['\\sqrt{2}', '√2'],
+    ['\\mathrm{margin}(\\mathrm{vacuum-stability})', 'margin(vacuum-stability)'],
     ['m^{-2}', '<i>m</i><sup>−2</sup>'],
   ])('%s', (tex, expected) => {
     expect(symbolHtml(tex).text).toBe(`<span class="math">${expected}</span>`);
