@@ -71,6 +71,52 @@ describe('every point of the domain has a result', () => {
     expect([...classes].sort()).toEqual([0, 1, 2]);
   });
 
+  it.each([1e-3, 1e-9])('whose parts agree with each other at tolerance %s', (tolerance) => {
+    const varied = [...VARIED, 'lambdaShift', 'ytShift'];
+    const task = smTask(varied, { running: { loops: 2, tolerance } });
+    const result = createEvaluator(task).evaluate(spread(500, [...WIDE, [-0.1, 0.1], [-0.1, 0.1]]));
+    const column = (name: string): Float64Array => {
+      const k = task.keep.indexOf(name);
+      return result.quantities.subarray(k * result.count, (k + 1) * result.count);
+    };
+    const present = (name: string, i: number): boolean => !Number.isNaN(column(name)[i]);
+    const broken: string[] = [];
+    for (let i = 0; i < result.count; i++) {
+      const promises = {
+        'unstable potential has its scale': column('lambdaEffMin')[i] < 0 === present('instabilityScale', i),
+        'negative quartic has its scale': column('lambdaMin')[i] < 0 === present('lambdaZeroScale', i),
+        'barrier below instability': !(column('barrierField')[i] > column('instabilityScale')[i]),
+        'zero not above the minimum': !(
+          column('lambdaZeroScale')[i] >
+          column('lambdaMinScale')[i] * (1 + 1e-9)
+        ),
+        'stable has no decay': (column('vacuumClass')[i] === 0) === column('lambdaEffMin')[i] >= 0,
+        'unstable has decayed': column('vacuumClass')[i] !== 2 || column('vacuumDecayExponent')[i] >= 0,
+        'metastable has not': column('vacuumClass')[i] !== 1 || !(column('vacuumDecayExponent')[i] > 0),
+      };
+      for (const [promise, kept] of Object.entries(promises))
+        if (!kept) broken.push(`${promise}: point ${i}`);
+    }
+    expect(broken).toEqual([]);
+  });
+
+  it('even where the quartic only just dips below zero between two steps of a coarse running', () => {
+    const inputs = {
+      ...{ GF: 1.1054039231661705e-5, MW: 80.54909326412462, MZ: 90.5, Mh: 575.7263656987816 },
+      ...{
+        Mt: 181.2415382211043,
+        alphaS: 0.11805096037010115,
+        cutoff: 2737372352094880000,
+        lambdaShift: 0.1,
+      },
+      ...{ mb: 4.712608581773566, mtau: 2, topMassShift: 3.3, ytShift: 0.08723249411214057 },
+    };
+    const task = smTask([], { running: { loops: 2, tolerance: 1e-3 }, fixed: inputs });
+    const { quantities } = createEvaluator(task).evaluate({ count: 1, values: new Float64Array(0) });
+    const value = (name: string): number => quantities[task.keep.indexOf(name)];
+    expect(value('barrierField')).toBeLessThan(value('instabilityScale'));
+  });
+
   it('at the corners too, at every number of loops', () => {
     const corner = (i: number): number[] => WIDE.map((range, k) => range[(i >> k) & 1]);
     const values = new Float64Array(64);

@@ -64,19 +64,21 @@ export class Curve {
     return NaN;
   }
 
-  /** The t of the lowest value between the start and the first sample at or after `until`. */
+  /** The t of the lowest value between the start and `until`. */
   lowest(until = Infinity): number {
     const { values, slopes } = this;
     const { count, times } = this.trajectory;
     let best = times[0];
     let least = values[0];
     for (let k = 1; k < count && times[k - 1] < until; k++) {
-      if (slopes[k - 1] < 0 && slopes[k] > 0) {
-        const bottom = findRoot(this.slope, times[k - 1], times[k], SCALE_ACCURACY);
+      const inside = times[k] <= until;
+      const end = inside ? times[k] : until;
+      if (slopes[k - 1] < 0 && (inside ? slopes[k] : this.slope(end)) > 0) {
+        const bottom = findRoot(this.slope, times[k - 1], end, SCALE_ACCURACY);
         const value = this.at(bottom);
         if (value < least) [least, best] = [value, bottom];
       }
-      if (values[k] < least) [least, best] = [values[k], times[k]];
+      if (inside && values[k] < least) [least, best] = [values[k], times[k]];
     }
     return best;
   }
