@@ -85,7 +85,7 @@ class FleetWorker {
     this.options.signal.addEventListener('abort', onAbort);
     if (this.options.signal.aborted) onAbort();
     try {
-      await this.#beat();
+      void this.#beat();
       await this.#ended;
     } finally {
       clearInterval(beat);
@@ -151,15 +151,16 @@ class FleetWorker {
     await enroll(this.redis, { name: this.name, threads: this.options.threads }).catch(() => undefined);
   }
 
-  /** Finishes what is in hand, or gives it back. */
+  /** Finishes what is in hand, or gives it back; without a server there is nobody to give it to. */
   async #close(queue: Worker): Promise<void> {
-    const finished = this.redis.status === 'ready' ? queue.close() : Promise.resolve();
-    await within(FINISH_MILLISECONDS, finished);
-    await within(CLOSING_MILLISECONDS, this.#giveBack());
-    await within(
-      CLOSING_MILLISECONDS,
-      Promise.allSettled([queue.disconnect(), leave(this.redis, this.name)]),
-    );
+    const isThere = this.redis.status === 'ready';
+    const closing = queue.close(!isThere);
+    if (isThere) {
+      await within(FINISH_MILLISECONDS, closing);
+      await within(CLOSING_MILLISECONDS, this.#giveBack());
+      await within(CLOSING_MILLISECONDS, leave(this.redis, this.name));
+    }
+    await within(CLOSING_MILLISECONDS, queue.disconnect());
     await this.#pools.close();
   }
 

@@ -21,13 +21,21 @@ export async function connectRedis(url: string, seconds: number): Promise<Redis>
 /** Calls `lost` once if the server stays away for `minutes`. */
 export function watchRedis(redis: Redis, minutes: number, lost: () => void): { stop(): void } {
   let clock: NodeJS.Timeout | undefined;
-  const stop = () => clearTimeout(clock);
-  redis.on('close', () => {
-    stop();
-    clock = setTimeout(lost, minutes * 60_000);
-  });
-  redis.on('ready', stop);
-  return { stop };
+  const onReady = () => {
+    clearTimeout(clock);
+    clock = undefined;
+  };
+  // Every attempt to connect again that fails is one more close.
+  const onClose = () => {
+    clock ??= setTimeout(lost, minutes * 60_000);
+  };
+  redis.on('ready', onReady).on('close', onClose);
+  return {
+    stop() {
+      redis.off('ready', onReady).off('close', onClose);
+      clearTimeout(clock);
+    },
+  };
 }
 
 /** What became of a promise within the time, or undefined; its rejection counts as nothing. */

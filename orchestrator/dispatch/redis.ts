@@ -14,6 +14,8 @@ import { workerProgram } from './worker-program.js';
 export interface RedisOptions {
   /** Give up when the server has been away for so long; default 5. */
   readonly lostMinutes?: number;
+  /** Give up when no server answers at first for so long; default 10. */
+  readonly reachSeconds?: number;
   /** What a worker must run to take a chunk; default: the worker program of this package. */
   readonly code?: string;
 }
@@ -24,15 +26,19 @@ export interface RedisOptions {
 export function openRedis(url: string, options: RedisOptions = {}): OpenDispatcher {
   return async (task, scope) => {
     const code = options.code ?? fleetCode(workerProgram());
-    const redis = await connectRedis(url, REACH_SECONDS);
+    const redis = await connectRedis(url, options.reachSeconds ?? 10);
     const fleet = new Fleet(redis, task, scope.replaceAll(/[^A-Za-z0-9.-]/g, '-'), code);
     fleet.watch(options.lostMinutes ?? 5, withoutPassword(url));
-    await fleet.start();
+    try {
+      await fleet.start();
+    } catch (error) {
+      await fleet.close();
+      throw fleet.trouble ?? error;
+    }
     return fleet;
   };
 }
 
-const REACH_SECONDS = 10;
 const SWEEP_MILLISECONDS = 1000;
 /** Sweeps in a row that must miss a job: its answer may be on the way. */
 const MISSED = 3;
@@ -52,6 +58,8 @@ interface Flight {
 }
 
 class Fleet implements Dispatcher {
+  /** What broke it. */
+  trouble: Error | undefined;
   readonly #queue: FleetQueue;
   readonly #answers: AnswerReader;
   readonly #document: TaskDocument;
@@ -206,6 +214,7 @@ class Fleet implements Dispatcher {
   }
 
   #break(error: Error): void {
+    this.trouble = error;
     void this.close().then(() => this.#onBroken(error));
   }
 

@@ -25,6 +25,6 @@ try {
 function work(store) {
   const run = store.run(1)?.id ?? store.createRun(order.newRun);
   const open = order.redis ? openRedis(order.redis, order) : openThreads(order.threads, order);
-  const onProgress = ({ counts }) => console.log(JSON.stringify({ counts }));
+  const onProgress = ({ counts, retried }) => console.log(JSON.stringify({ counts, retried }));
   return coordinate({ store, run, plan: order.newRun.plan, open, onProgress, signal: stop.signal });
 }
