@@ -1,7 +1,6 @@
 import { topMass } from '../constraints/data/measured.js';
 import type { Block, Model, Options, QuantitySpec, RunningSettings } from '../contract.js';
 import { log } from '../numerics/log.js';
-import { derivatives } from '../running/derivatives.js';
 import { G1_OVER_GY, matching } from '../running/matching.js';
 import { running } from '../running/running.js';
 import { addTwoLoops, oneLoop } from '../running/sm-beta-functions.js';
@@ -50,7 +49,7 @@ export const standardModel: Model = {
 
 /** The modules of one evaluation and the trajectories they share. */
 function chain(settings: RunningSettings) {
-  const trajectories = new Trajectories(derivatives(settings.loops));
+  const trajectories = new Trajectories(settings.loops);
   const modules = [matching(), running(settings, trajectories), vacuum(trajectories)];
   return { modules, trajectories };
 }

@@ -2,6 +2,7 @@ import { createDop853 } from '../numerics/dop853.js';
 import type { Dop853, Dop853Status } from '../numerics/dop853.js';
 import { exp } from '../numerics/exp.js';
 import { log1p } from '../numerics/log.js';
+import { derivatives } from './derivatives.js';
 import type { Derivatives } from './derivatives.js';
 import { measure } from './perturbativity.js';
 import { STATE_SIZE } from './state.js';
@@ -122,8 +123,11 @@ function doubled(array: Float64Array): Float64Array<ArrayBuffer> {
 /** The trajectories of the block in hand: how modules of one evaluation share what the running found. */
 export class Trajectories {
   private readonly pool: Trajectory[] = [];
+  private readonly f: Derivatives;
 
-  constructor(private readonly f: Derivatives) {}
+  constructor(loops: 1 | 2 | 3) {
+    this.f = derivatives(loops);
+  }
 
   /** The trajectory of a point of the block: what `running` wrote last. */
   of(point: number): Trajectory {

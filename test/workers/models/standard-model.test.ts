@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { codeFingerprint } from '../../../orchestrator/provenance/code.js';
 import { goldenBetas } from '../../golden/betas/polynomials.js';
 import { SETTINGS, sm } from '../sm-task.js';
 
@@ -57,6 +58,17 @@ describe('inputs and quantities', () => {
     for (const module of sm.modules(SETTINGS, {})) {
       for (const need of module.needs) expect([need, known.has(need)]).toEqual([need, true]);
       for (const { name } of module.gives) known.add(name);
+    }
+  });
+
+  it('running and vacuum carry the beta functions and the integrator in their fingerprints', () => {
+    const [, running, vacuum] = sm.modules(SETTINGS, {});
+    const files = ['running/sm-beta-functions.ts', 'running/sm-three-loops.ts', 'numerics/dop853.ts'];
+    for (const module of [running, vacuum]) {
+      for (const file of files) {
+        const url = new URL(`../../../workers/${file}`, import.meta.url).href;
+        expect(codeFingerprint(module.code, [url])).not.toBe(codeFingerprint(module.code));
+      }
     }
   });
 

@@ -14,7 +14,7 @@ const LOOP = 1 / (16 * Math.PI ** 2);
 
 function run(points: readonly GoldenPoint[], tolerance = TOLERANCE) {
   const block = blockOf(points);
-  const trajectories = new Trajectories(derivatives(points[0].loops));
+  const trajectories = new Trajectories(points[0].loops);
   running({ loops: points[0].loops, tolerance }, trajectories).evaluate(block);
   const value = (name: string, i = 0): number => block.columns.get(name)![i];
   return { block, trajectories, value };

@@ -1,5 +1,4 @@
 import { describe, expect, it } from 'vitest';
-import { derivatives } from '../../../workers/running/derivatives.js';
 import { running } from '../../../workers/running/running.js';
 import { Trajectories } from '../../../workers/running/trajectory.js';
 import { vacuum } from '../../../workers/spectrum/vacuum.js';
@@ -10,7 +9,7 @@ import type { GoldenPoint } from '../../golden/standard-model/points.js';
 
 function judge(points: readonly GoldenPoint[], tolerance = 1e-10): (name: string, i?: number) => number {
   const block = blockOf(points);
-  const trajectories = new Trajectories(derivatives(points[0].loops));
+  const trajectories = new Trajectories(points[0].loops);
   running({ loops: points[0].loops, tolerance }, trajectories).evaluate(block);
   vacuum(trajectories).evaluate(block);
   expect([...block.failure]).toEqual(points.map(() => 0));
