@@ -45,7 +45,8 @@ export function readStrata(
   const drafts = read.flatMap((draft) => (draft ? [{ ...draft, varies: draft.varies || written }] : []));
   requireNames(drafts, report);
   const used = checkUse(drafts, shared, drafts.length === read.length, report);
-  const strata = drafts.flatMap((draft) => finish(draft, report));
+  const strata = drafts.map((draft) => finish(draft, report));
+  requirePossible(strata, report);
   return { strata, axes: used, everywhere: new Set(shared.keys()) };
 }
 
@@ -151,36 +152,32 @@ function checkAxis({ axis, path, input }: AxisNode, by: ReadonlySet<Method>, rep
   }
 }
 
-/** A stratum of the plan, or none after complaining. */
-function finish(draft: Draft, report: Report): Stratum[] {
-  const { name, method, path } = draft;
-  const vary = [...draft.axes.values()].flatMap(({ axis }) =>
-    axis ? [method === 'grid' ? axis : withoutSteps(axis)] : [],
-  );
+/** A stratum of the plan, as far as its axes are right. */
+function finish({ name, method, path, points, axes, varies }: Draft, report: Report): Stratum {
+  const vary = [...axes.values()]
+    .flatMap(({ axis }) => axis ?? [])
+    .map((axis) => (method === 'grid' ? axis : withoutSteps(axis)));
   vary.sort((a, b) => (a.input < b.input ? -1 : 1));
-  if (!draft.varies) {
+  if (!varies) {
     const at = path.length > 1 ? path : ['vary'];
     report.value(at, { expected: 'at least one input under vary', found: 'none' });
   }
   if (method === 'sobol' && vary.length > SOBOL_DIMENSIONS) {
-    report.value(path, {
-      expected: `at most ${SOBOL_DIMENSIONS} inputs for sobol`,
-      found: String(vary.length),
-    });
+    const expected = `at most ${SOBOL_DIMENSIONS} inputs for sobol`;
+    report.value(path, { expected, found: String(vary.length) });
   }
-  if (method !== 'grid') return [{ name, method, generation: 0, points: draft.points ?? 10_000, vary }];
-  const size = gridSize(vary);
-  if (draft.points !== undefined) {
+  if (method === 'grid' && points !== undefined) {
     const hint = 'the steps and lists of a grid say how many points it has';
-    report.value([...path, 'points'], {
-      expected: 'no points for a grid',
-      found: String(draft.points),
-      hint,
-    });
+    report.value([...path, 'points'], { expected: 'no points for a grid', found: String(points), hint });
   }
-  if (size > MOST_POINTS)
-    report.value(path, { expected: `a grid of at most ${MOST_POINTS} points`, found: `${size} points` });
-  return [{ name, method, generation: 0, points: size, vary }];
+  const count = method === 'grid' ? gridSize(vary) : (points ?? 10_000);
+  return { name, method, generation: 0, points: count, vary };
+}
+
+function requirePossible(strata: readonly Stratum[], report: Report): void {
+  const total = strata.reduce((sum, { points }) => sum + points, 0);
+  if (total <= MOST_POINTS) return;
+  report.value(['sample'], { expected: `at most ${MOST_POINTS} points in all`, found: String(total) });
 }
 
 function withoutSteps(axis: Axis): Axis {
