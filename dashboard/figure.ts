@@ -34,7 +34,7 @@ export interface Figure {
 /** Single points up to this many; beyond, cells say more and weigh less. */
 const MOST_POINTS = 4000;
 
-/** Asks the store for what the figure needs; undefined where no point passes the filter. */
+/** Asks the store for what the figure needs; undefined where no point has a place on these axes. */
 export async function figureOf(
   questions: AsyncQuestions,
   request: FigureRequest,
@@ -54,7 +54,7 @@ async function asPoints(
   x: ColumnRecord,
   y: ColumnRecord,
   colour: ColumnRecord | undefined,
-): Promise<Figure> {
+): Promise<Figure | undefined> {
   const { run, where, view, counts } = request;
   const found = await questions.scatter(
     { run: run.id, where },
@@ -69,13 +69,17 @@ async function asPoints(
     y: axisOf(y, chosenRange(request, 'y', y) ?? rangeOf(found.y, yScale), yScale),
   };
   const spec = { ...axes, xs: found.x, ys: found.y, colour: colouring(colour, found.colour) };
-  const drawn = found.x.filter((value, i) => placed(axes.x, value) && placed(axes.y, found.y[i])).length;
-  const some =
-    found.x.length < counts.points ? `Every ${nth(counts.points / found.x.length)} point in order; ` : '';
+  if (found.total === 0) return undefined;
+  const coloured = (i: number): boolean => !found.colour || Number.isFinite(found.colour[i]);
+  const drawn = found.x.filter(
+    (value, i) => placed(axes.x, value) && placed(axes.y, found.y[i]) && coloured(i),
+  ).length;
+  const every = Math.round(found.total / found.x.length);
+  const some = every > 1 ? `Every ${nth(every)} point in order; ` : '';
   return {
     summary: `Points in the plane of ${nameOf(y)} against ${nameOf(x)}${colourPhrase(colour)}.`,
     caption: captionOf('Points', x, y, colour),
-    remark: `${some}${countText(drawn)} points drawn${absentPhrase(found.x.length - drawn)}`,
+    remark: `${some}${countText(drawn)} points drawn${absentPhrase(counts.points - found.total + found.x.length - drawn)}`,
     draw: (setting) => scatterPlot(setting, spec),
   };
 }
@@ -86,7 +90,7 @@ async function asCells(
   x: ColumnRecord,
   y: ColumnRecord,
   colour: ColumnRecord | undefined,
-): Promise<Figure> {
+): Promise<Figure | undefined> {
   const { run, where, view, counts } = request;
   const [xScale, yScale] = [scaleOf(x, view.xScale), scaleOf(y, view.yScale)];
   const grid = await questions.density(
@@ -96,6 +100,7 @@ async function asCells(
     colour?.name ?? null,
     cellsFor(counts.points),
   );
+  if (grid.undrawn >= counts.points) return undefined;
   const axes = {
     x: axisOf(x, [grid.x.low, grid.x.high], xScale),
     y: axisOf(y, [grid.y.low, grid.y.high], yScale),
@@ -236,10 +241,9 @@ function classPhrase(grid: DensityGrid): string {
 }
 
 function absentPhrase(count: number): string {
-  return count > 0 ? `; ${countText(count)} points have no place on these axes` : '';
+  return count > 0 ? `; ${countText(count)} points without a value are not drawn` : '';
 }
 
-function nth(ratio: number): string {
-  const n = Math.round(ratio);
-  return n === 2 ? '2nd' : n === 3 ? '3rd' : n <= 1 ? '' : `${n}th`;
+function nth(n: number): string {
+  return n === 2 ? '2nd' : n === 3 ? '3rd' : `${n}th`;
 }

@@ -16,8 +16,8 @@ export interface PointPageParts {
   readonly constraints: readonly ConstraintRecord[];
   /** Every stored column. */
   readonly stored: ReadonlyMap<string, number>;
-  /** Missing for a point that no worker could do: evaluating it here might take the dashboard down too. */
-  readonly evaluated: StoredPoint | undefined;
+  /** Its facts alone, where no worker could do the point: it is not evaluated here either. */
+  readonly evaluated: StoredPoint;
   readonly catalogue: Catalogue | undefined;
   /** Neighbours in the stratum, where there are any. */
   readonly previous: number | null;
@@ -39,16 +39,19 @@ export function pointPage(parts: PointPageParts): string {
         <h1 id="point-title">${name}</h1>
         ${verdictWords(parts)} ${neighbours(parts)}
       </section>
-      ${evaluated ? evaluatedSections(parts, evaluated) : storedTable(parts.columns, parts.stored)}
+      ${isUnfinished(parts) ? storedTable(parts.columns, parts.stored) : evaluatedSections(parts, evaluated)}
       ${reproduction(parts)}`,
   });
 }
 
 /** The verdict in words, and what brought it about. */
-export function verdictWords({ evaluated, constraints, catalogue }: PointPageParts): Safe {
-  if (!evaluated) {
+export function verdictWords(parts: PointPageParts): Safe {
+  const { evaluated, constraints, catalogue } = parts;
+  if (isUnfinished(parts)) {
+    const reason = evaluated.facts.reason;
     return html`<p class="verdict verdict-unfinished">
-      Unfinished: no worker could compute this point, so it is not evaluated here either.
+      Unfinished: no worker could compute this point${reason && html` (${reason})`}, so it is not evaluated
+      here either.
     </p>`;
   }
   const { facts } = evaluated;
@@ -80,6 +83,10 @@ export function verdictWords({ evaluated, constraints, catalogue }: PointPagePar
       away > 0 && `; ${away} of them ${away === 1 ? 'does' : 'do'} not apply here`
     }.
   </p>`;
+}
+
+function isUnfinished({ evaluated }: PointPageParts): boolean {
+  return evaluated.facts.verdict === 'unfinished';
 }
 
 function neighbours(parts: PointPageParts): Safe {
@@ -127,17 +134,19 @@ function couplingFigures({ trace }: StoredPoint): Part {
   });
 }
 
-function reproduction({ run, evaluated }: PointPageParts): Safe {
+function reproduction(parts: PointPageParts): Safe {
+  const { run, evaluated } = parts;
+  const { fingerprint } = evaluated.facts;
   return html`<section class="sheet" aria-labelledby="again-title">
     <h2 id="again-title">The same point again</h2>
-    ${evaluated && agreement(evaluated)}
-    ${evaluated && commandList([{ command: evaluated.command, does: 'Evaluates this point with all its inputs' }])}
+    ${!isUnfinished(parts) && agreement(evaluated)}
+    ${commandList([{ command: evaluated.command, does: 'evaluates this point with all its inputs' }])}
     <dl class="facts">
       ${
-        evaluated &&
+        fingerprint !== '' &&
         html`<div>
           <dt>Fingerprint of the point, its result and all it is a function of</dt>
-          <dd><code>${evaluated.facts.fingerprint}</code></dd>
+          <dd><code>${fingerprint}</code></dd>
         </div>`
       }
       <div>

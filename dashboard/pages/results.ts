@@ -73,7 +73,7 @@ function figurePart(parts: ResultParts): Part {
   const { run, view, figure, counts } = parts;
   if (!figure) {
     return html`<div class="sheet note">
-      <p>${counts.total === 0 ? 'No point is stored yet.' : 'No point passes this filter.'}</p>
+      <p>${emptiness(counts)}</p>
     </div>`;
   }
   const [, , how] = captionLines(parts);
@@ -99,6 +99,13 @@ function figurePart(parts: ResultParts): Part {
       </p>
     </figcaption>
   </figure>`;
+}
+
+function emptiness(counts: FilteredCounts): string {
+  if (counts.total === 0) return 'No point is stored yet.';
+  return counts.points === 0
+    ? 'No point passes this filter.'
+    : 'None of these points has a value on both axes, so there is nothing to draw.';
 }
 
 function tablePart({ run, view, where, page, counts }: ResultParts): Part {

@@ -40,7 +40,8 @@ async function figureFile(request: Request, deps: DashboardDeps): Promise<string
   const asked = await askedWell(request, deps);
   const counts = await deps.questions.counts({ run: asked.run.id, where: asked.where });
   const figure = await figureFor(asked, counts, deps);
-  if (!figure) throw new Refusal(404, 'There is nothing to draw', 'No point passes this filter.');
+  if (!figure)
+    throw new Refusal(404, 'There is nothing to draw', 'No point of this view has a value on both axes.');
   const size = queryOf(request).get('size') === 'narrow' ? NARROW : WIDE;
   const notes = captionLines({ run: asked.run, where: asked.where, counts, figure });
   return figure.draw({ size, notes, summary: figure.summary, place: 'file' });

@@ -53,13 +53,13 @@ async function pointPageOf(request: Request, { questions, commands }: DashboardD
   const [stratum, index] = [numberIn(request, 'stratum'), numberIn(request, 'index')];
   const stored = await questions.point(run.id, stratum, index);
   if (!stored) throw noPoint(run, stratum, index);
-  const unfinished = stored.get('verdict') === UNFINISHED;
   const [columns, constraints, catalogue, evaluated] = await Promise.all([
     questions.columns(run.id),
     questions.constraints(run.id),
     commands.catalogue(run.id),
-    unfinished ? undefined : commands.pointFacts(run.id, stratum, index),
+    commands.pointFacts(run.id, stratum, index),
   ]);
+  if (!evaluated) throw noPoint(run, stratum, index);
   const planned = pointsOf(run, stratum);
   return pointPage({
     ...{ run, stratum, index, stored, columns, constraints, catalogue, evaluated },
@@ -67,9 +67,6 @@ async function pointPageOf(request: Request, { questions, commands }: DashboardD
     next: index + 1 < planned ? index + 1 : null,
   });
 }
-
-/** Index of the verdict `unfinished` in a stored column. */
-const UNFINISHED = 3;
 
 function pointsOf(run: RunRecord, stratum: number): number {
   const plan = JSON.parse(run.plan) as CheckFacts['plan'];
