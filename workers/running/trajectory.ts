@@ -21,7 +21,7 @@ export const SCALE_ACCURACY = 1e-12;
  *  freedom like 1/(t + constant), and in u a step of even length serves everywhere. A third fewer evaluations. */
 const STRETCH = 20;
 /** Samples a step: fine enough to see a coupling turn between them. */
-const SAMPLES = 3;
+const SAMPLES = 2;
 
 const blownUp = (_t: number, y: Float64Array): boolean => measure(y) > CEILING;
 
