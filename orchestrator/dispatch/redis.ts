@@ -113,10 +113,13 @@ class Fleet implements Dispatcher {
 
   submit(job: ChunkJob): void {
     const common = { scope: this.scope, task: this.#document.hash, code: this.code };
+    const message = chunkMessage(job, common);
+    const turn = this.#returns.get(job.id) ?? 0;
     const flight = {
-      jobId: `${this.scope}_${job.id}_${this.#returns.get(job.id) ?? 0}`,
+      // Always the same for the same question, so that adding it again after a doubt does nothing.
+      jobId: `${this.scope}_${job.id}_${message.key.slice(0, 12)}_${turn}`,
       count: job.points.count,
-      message: chunkMessage(job, common),
+      message,
       sent: false,
       sending: false,
       missed: 0,
