@@ -13,6 +13,10 @@ await runProgram(process.argv.slice(2), {
   async serveDashboard(questions, { port, host }) {
     // Loaded only where it is wanted: most commands never open it.
     const { serve } = await import('../dashboard/serve.js');
-    return serve({ questions, commands: dashboardCommands(questions) }, port, host);
+    const onError = (error: unknown) => {
+      const text = error instanceof Error ? (error.stack ?? error.message) : String(error);
+      process.stderr.write(`a page could not be made: ${text}\n`);
+    };
+    return serve({ questions, commands: dashboardCommands(questions), onError }, port, host);
   },
 });

@@ -1,3 +1,4 @@
+import { basename, isAbsolute } from 'node:path';
 import { canonicalJson } from '../provenance/canonical.js';
 import { readScan } from '../scan/read-scan.js';
 import type { RunRecord } from '../store/records.js';
@@ -20,7 +21,9 @@ export interface LaunchFacts extends RunAccount {
  *  @throws FileMistakes before the store is touched */
 export async function launch(scan: { bytes: Uint8Array; file: string }, work: Work): Promise<LaunchFacts> {
   const { plan, text } = readScan(scan.bytes, scan.file);
-  const wanted = newRun(plan, { name: scan.file, text }, { relation: 'launch', parent: null });
+  // A run tells nobody where on a machine its file lay.
+  const name = isAbsolute(scan.file) ? basename(scan.file) : scan.file;
+  const wanted = newRun(plan, { name, text }, { relation: 'launch', parent: null });
   return withWriting(work.store, async (store) => {
     const start = chooseRun(store, wanted);
     const run = await finish(store, start, work);

@@ -1,4 +1,5 @@
 import { setTimeout as wait } from 'node:timers/promises';
+import { NotHeld } from '../mistakes.js';
 import type { Reading } from '../store/reading.js';
 import type { RunRecord } from '../store/records.js';
 import type { Progress } from './commands.js';
@@ -11,12 +12,17 @@ const LOOK_EVERY_MS = 500;
 /** Times of the last few seconds are what the pace is measured over. */
 const LOOKS_REMEMBERED = 20;
 
-/** Follows a run that any process works on, through the store alone, until it is not running any more. */
+export interface WatchFacts extends RunAccount {
+  /** The run says `running`, but the process that worked on it is gone. */
+  readonly abandoned: boolean;
+}
+
+/** Follows a run that any process works on, through the store alone, until nobody works on it any more. */
 export async function watch(
   reading: Reading,
   word: string,
   on: { progress(progress: Progress): void; readonly signal: AbortSignal },
-): Promise<RunAccount> {
+): Promise<WatchFacts> {
   const { id } = findRun(reading, word);
   const looks: { at: number; points: number }[] = [];
   for (;;) {
@@ -24,9 +30,19 @@ export async function watch(
     looks.push({ at: performance.now(), points: run.counts.points });
     if (looks.length > LOOKS_REMEMBERED) looks.shift();
     on.progress(progressOf(run, looks, reading));
-    if (run.state !== 'running' || on.signal.aborted) return accountOf(run);
+    const abandoned = run.state === 'running' && !reading.isWorkedOn();
+    if (run.state !== 'running' || abandoned || on.signal.aborted) return { ...accountOf(run), abandoned };
     await wait(LOOK_EVERY_MS, undefined, { signal: on.signal }).catch(() => undefined);
   }
+}
+
+/** @throws NotHeld where the process that worked on the run is gone */
+export function checkNotAbandoned(facts: WatchFacts): void {
+  if (!facts.abandoned) return;
+  throw new NotHeld(
+    'abandoned',
+    `run ${facts.run} stopped at ${facts.points} of ${facts.wanted} points without a word: the same command that made it goes on with it`,
+  );
 }
 
 function progressOf(

@@ -54,6 +54,12 @@ export function takeLease(path: string, db: Connection): Lease {
   };
 }
 
+/** Whether a coordinator holds the store and gives signs of life. */
+export function hasLiveCoordinator(db: Connection): boolean {
+  const holder = db.prepare<[], Holder>('SELECT owner, pid, host, beat FROM lease WHERE id = 1').get();
+  return holder !== undefined && isAlive(holder);
+}
+
 /** Owners that live in this process: a lease with our process id and another owner is a dead one's. */
 const ownersHere = new Set<string>();
 

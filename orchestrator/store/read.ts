@@ -5,6 +5,7 @@ import { chunkStatistics } from './chunk-statistics.js';
 import { cachedColumns } from './column-cache.js';
 import type { Connection } from './connect.js';
 import { extentsIn } from './extents.js';
+import { hasLiveCoordinator } from './lease.js';
 import type { Position, Reading } from './reading.js';
 import type { Batch } from './records.js';
 import { runsIn } from './runs.js';
@@ -28,6 +29,7 @@ export function readingOf(path: string, db: Connection): Reading {
     snapshot(() => batchFrom(source(run), names, at.stratum, at.index));
   return {
     runs: () => onStore(path, () => runs.all()),
+    isWorkedOn: () => onStore(path, () => hasLiveCoordinator(db)),
     run: (id) => onStore(path, () => runs.get(id)),
     columns: (run) => onStore(path, () => runs.columns(run)),
     constraints: (run) => onStore(path, () => runs.constraints(run)),

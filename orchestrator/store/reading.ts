@@ -3,6 +3,8 @@ import type { Batch, ColumnRecord, ConstraintRecord, RunRecord } from './records
 /** The read side of a store: synchronous, on its own read-only connection. */
 export interface Reading {
   runs(): readonly RunRecord[];
+  /** Whether a coordinator holds the store and is alive: a run may say `running` although its process was killed. */
+  isWorkedOn(): boolean;
   /** Undefined if there is no such run. */
   run(id: number): RunRecord | undefined;
   columns(run: number): readonly ColumnRecord[];

@@ -9,7 +9,7 @@ import { withReading } from '../commands/read-store.js';
 import { checkComplete } from '../commands/run-facts.js';
 import { show } from '../commands/show.js';
 import { checkVerified, verify } from '../commands/verify.js';
-import { watch } from '../commands/watch.js';
+import { checkNotAbandoned, watch } from '../commands/watch.js';
 import { UserMistake } from '../mistakes.js';
 import { compareText } from './compare-text.js';
 import { count } from './numbers.js';
@@ -48,6 +48,7 @@ function watchCommand(program: Command, session: Session): void {
         }).finally(() => bar.end());
         await answer(session, options, facts, runText);
         if (signal.aborted) throw new Stopped(Number(signal.reason));
+        checkNotAbandoned(facts);
         checkComplete(facts);
       }),
   );
@@ -141,6 +142,8 @@ function exportCommand(program: Command, session: Session): void {
     'export latest --surviving --columns Mt,Mh,lambdaMin --out alive.csv',
     'export latest --where "Mt < 172" | head',
   ).action(async (run: string, options: ExportOptions) => {
+    if (options.json && options.out === undefined)
+      throw new UserMistake({ where: 'export --json', expected: '--out FILE', found: 'none' });
     const facts = await exportRun(run, options, (text) => write(session, text));
     if (facts.file === null) return;
     const rows = `${count(facts.points)} points in ${facts.file}`;

@@ -10,30 +10,43 @@ import { tellTrouble } from './trouble.js';
 /** Carries out one command line and ends the process with its status:
  *  0 done, 1 a check did not hold, 2 the user's mistake, 3 broken store or environment, 130 after Ctrl-C. */
 export async function runProgram(words: readonly string[], surroundings: Surroundings): Promise<never> {
-  const stop = new AbortController();
-  let listening = false;
-  const session: Session = {
-    ...surroundings,
-    answered: false,
-    stopSignal() {
-      listening = true;
-      return stop.signal;
-    },
-  };
-  const interrupt = (status: number) => () => {
-    // The second time, or where nobody would stop cleanly: at once.
-    if (!listening || stop.signal.aborted) process.exit(status);
-    stop.abort(status);
-  };
-  process.on('SIGINT', interrupt(130));
-  process.on('SIGTERM', interrupt(143));
-  // Nobody reads on (`trigpoint export 3 | head`): that is how the reader says it has enough.
+  const stop = stopper();
+  const session: Session = { ...surroundings, answered: false, stopSignal: stop.listen };
+  // Nobody reads on (`trigpoint export 3 | head`): that is how a reader says it has enough.
   surroundings.out.on('error', (error: NodeJS.ErrnoException) =>
     process.exit(error.code === 'EPIPE' ? 0 : 3),
   );
   surroundings.err.on('error', () => undefined);
-  const status = await carryOut(words, session);
-  process.exit(status);
+  process.on('uncaughtException', (error) => {
+    void tellTrouble(error, false, session).then((status) => process.exit(status));
+  });
+  process.exit(await carryOut(words, session));
+}
+
+/** A terminal and npm both tell of one Ctrl-C: what comes so soon after is not a second one. */
+const SAME_KEY_MS = 1000;
+
+/** Ctrl-C and its like: a clean stop where a command listens, else, or the second time, the end at once. */
+function stopper() {
+  const controller = new AbortController();
+  let listening = false;
+  let told = 0;
+  const interrupt = (status: number) => () => {
+    if (!listening) process.exit(status);
+    if (!controller.signal.aborted) {
+      told = Date.now();
+      controller.abort(status);
+    } else if (Date.now() - told > SAME_KEY_MS) process.exit(status);
+  };
+  process.on('SIGINT', interrupt(130));
+  process.on('SIGTERM', interrupt(143));
+  process.on('SIGHUP', interrupt(129));
+  return {
+    listen: () => {
+      listening = true;
+      return controller.signal;
+    },
+  };
 }
 
 async function carryOut(words: readonly string[], session: Session): Promise<number> {

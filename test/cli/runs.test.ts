@@ -178,3 +178,33 @@ describe('--serve', () => {
     expect((await running.ended).status).toBe(0);
   });
 });
+
+describe('a launch that is killed', () => {
+  it('is noticed by watch with status 1, and launched again it ends with the digest of an undisturbed run', async () => {
+    const cwd = folderWithScans(6000);
+    const running = start(['launch', 'plane.yaml'], { cwd });
+    await running.saying(/^\d+ % {2}[1-9][\d,]* of 6,000/m);
+    running.process.kill('SIGKILL');
+    await running.ended;
+    const watched = await trigpoint(['watch', 'latest', '--json'], { cwd });
+    expect(watched.status).toBe(1);
+    expect(JSON.parse(watched.out)).toMatchObject({ run: 1, state: 'running', abandoned: true });
+    const resumed = await document(['launch', 'plane.yaml'], { cwd });
+    expect(resumed).toMatchObject({ run: 1, how: 'resumed', state: 'complete', points: 6000 });
+    const undisturbed = await document(['launch', 'plane.yaml'], { cwd: folderWithScans(6000) });
+    expect(resumed.digest).toBe(undisturbed.digest);
+  });
+});
+
+describe('one Ctrl-C that is told twice, by the terminal and by npm', () => {
+  it('is one: the run is paused cleanly', async () => {
+    const cwd = folderWithScans(20_000);
+    const running = start(['launch', 'plane.yaml', '--json'], { cwd });
+    await running.saying(/^\d+ % {2}[1-9]/m);
+    running.process.kill('SIGINT');
+    running.process.kill('SIGINT');
+    const { status, out } = await running.ended;
+    expect(status).toBe(130);
+    expect(JSON.parse(out)).toMatchObject({ state: 'paused' });
+  });
+});
