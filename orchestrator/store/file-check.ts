@@ -14,8 +14,14 @@ export function inspectFile(path: string): FileState {
   if (state.size === 0) return 'empty';
   const { header, size } = readHeader(path);
   if (header.toString('latin1', 0, 16) !== 'SQLite format 3\0') throw notAStore(path);
-  checkLength(path, header, size);
+  // With a log beside it the file may well be short: what is missing is in the log, e.g. after a full disk.
+  if (!hasLog(path)) checkLength(path, header, size);
   return header[18] === 2 ? 'wal' : 'rollback';
+}
+
+function hasLog(path: string): boolean {
+  const length = (ending: string) => statSync(path + ending, { throwIfNoEntry: false })?.size ?? 0;
+  return length('-wal') > 0 || length('-journal') > 0;
 }
 
 function readHeader(path: string): { header: Buffer; size: number } {

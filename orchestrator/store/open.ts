@@ -3,6 +3,7 @@ import type { Connection } from './connect.js';
 import { takeLease } from './lease.js';
 import { readingOf } from './read.js';
 import type { Reading } from './reading.js';
+import { settle } from './settle.js';
 import { onStore } from './sqlite-trouble.js';
 import { writingOf } from './write.js';
 import type { Writing } from './writing.js';
@@ -27,5 +28,13 @@ export function openForWriting(path: string): Writing {
  *  @throws Broken where there is no store or it cannot be read */
 export function openForReading(path: string): Reading {
   const db: Connection = connectForReading(path);
-  return readingOf(path, db);
+  const reading = readingOf(path, db);
+  return {
+    ...reading,
+    close() {
+      if (!db.open) return;
+      reading.close();
+      settle(path);
+    },
+  };
 }
