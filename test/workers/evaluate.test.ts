@@ -68,7 +68,7 @@ describe('every point of the domain has a result', () => {
       expect([name, wrong]).toEqual([name, -1]);
     });
     const classes = new Set(result.quantities.subarray(task.keep.indexOf('vacuumClass') * result.count));
-    expect([...classes].sort()).toEqual([0, 1, 2]);
+    expect([...classes].sort()).toEqual([0, 1, 2, 3]);
   });
 
   it.each([1e-3, 1e-9])('whose parts agree with each other at tolerance %s', (tolerance) => {
@@ -90,7 +90,10 @@ describe('every point of the domain has a result', () => {
           column('lambdaZeroScale')[i] >
           column('lambdaMinScale')[i] * (1 + 1e-9)
         ),
-        'stable has no decay': (column('vacuumClass')[i] === 0) === column('lambdaEffMin')[i] >= 0,
+        'stable is positive': column('vacuumClass')[i] !== 0 || column('lambdaEffMin')[i] >= 0,
+        'stable and metastable are perturbative, what is neither is not':
+          column('vacuumClass')[i] === 2 ||
+          (column('vacuumClass')[i] === 3) === present('perturbativityScale', i),
         'unstable has decayed': column('vacuumClass')[i] !== 2 || column('vacuumDecayExponent')[i] >= 0,
         'metastable has not': column('vacuumClass')[i] !== 1 || !(column('vacuumDecayExponent')[i] > 0),
       };

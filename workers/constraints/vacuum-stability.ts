@@ -1,5 +1,5 @@
 import type { Constraint } from '../contract.js';
-import { METASTABLE, STABLE, VACUUM_CLASSES } from '../spectrum/vacuum-class.js';
+import { METASTABLE, NOT_PERTURBATIVE, STABLE, VACUUM_CLASSES } from '../spectrum/vacuum-class.js';
 
 const NEEDS = [
   'vacuumClass',
@@ -32,7 +32,8 @@ export const vacuumStability: Constraint = {
     { text: 'Isidori, Ridolfi and Strumia, 2001, metastability', ref: 'hep-ph/0104016' },
     { text: 'Buttazzo et al., 2013, near-criticality', ref: 'arXiv:1307.3536' },
   ],
-  validity: 'fields between M_t and the cut-off, or the scale where perturbativity is lost if that is lower',
+  validity:
+    'fields between M_t and the cut-off; not applicable where a coupling passes 4 pi below the cut-off before the vacuum is found unstable',
   neglects:
     'two loops of the potential, determinants and gravity in the decay, thermal and inflationary decay, and whatever lies beyond the cut-off; ' +
     'the theory error of the matching moves the border of absolute stability by about 0.3 GeV of M_h',
@@ -41,8 +42,9 @@ export const vacuumStability: Constraint = {
     const strict = options.accept === 'stable';
     for (let i = 0; i < into.outcome.length; i++) {
       const worst = strict ? STABLE : METASTABLE;
-      into.outcome[i] = Number.isNaN(fate[i]) ? 2 : fate[i] <= worst ? 0 : 1;
-      into.margin[i] = strict ? effective[i] : Math.max(effective[i], metastable[i]);
+      const known = fate[i] !== NOT_PERTURBATIVE && !Number.isNaN(fate[i]);
+      into.outcome[i] = !known ? 2 : fate[i] <= worst ? 0 : 1;
+      into.margin[i] = !known ? NaN : strict ? effective[i] : Math.max(effective[i], metastable[i]);
       into.logLikelihood[i] = NaN;
     }
   },

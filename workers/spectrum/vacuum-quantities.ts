@@ -94,7 +94,8 @@ export const vacuumQuantities: readonly QuantitySpec[] = [
     name: 'vacuumClass',
     unit: '1',
     symbol: '\\mathrm{vacuum}',
-    meaning: 'fate of the electroweak vacuum',
+    meaning:
+      'fate of the electroweak vacuum; not perturbative where a coupling passes 4 pi before it is known',
     labels: VACUUM_CLASSES,
     caution: THEORY,
   },

@@ -7,7 +7,7 @@ import { Curve } from './curve.js';
 import type { Trajectories, Trajectory } from '../running/trajectory.js';
 import { Lifetime, LOG_GYR_GPC3, logProbability, logRate, MetastabilityMargin } from './decay.js';
 import { Barrier, EffectiveQuartic } from './effective-quartic.js';
-import { METASTABLE, STABLE, UNSTABLE } from './vacuum-class.js';
+import { METASTABLE, NOT_PERTURBATIVE, STABLE, UNSTABLE } from './vacuum-class.js';
 import { vacuumQuantities } from './vacuum-quantities.js';
 
 /** The quartic itself as an observed function. */
@@ -43,14 +43,14 @@ export function vacuum(trajectories: Trajectories): Module {
     name: 'vacuum',
     code: import.meta.url,
     // lambdaAtStart stands for the running: without it there is no trajectory.
-    needs: ['lambdaAtStart', 'largestQuartic'],
+    needs: ['lambdaAtStart', 'perturbativityScale'],
     gives: vacuumQuantities,
     evaluate: (block) => judgeBlock(block, trajectories, curves),
   };
 }
 
 function judgeBlock(block: Block, trajectories: Trajectories, curves: Curves): void {
-  column(block, 'largestQuartic');
+  const lost = column(block, 'perturbativityScale');
   const out = outputs(block, vacuumQuantities);
   for (let i = 0; i < block.count; i++) {
     if (block.failure[i] !== 0) continue;
@@ -58,6 +58,7 @@ function judgeBlock(block: Block, trajectories: Trajectories, curves: Curves): v
     writeQuartic(trajectory, curves, i, out);
     writePotential(trajectory, curves, i, out);
     writeLifetime(trajectory, curves, i, out);
+    out[10][i] = classify(out[3][i], out[7][i], lost[i]);
   }
 }
 
@@ -85,15 +86,19 @@ function writePotential(trajectory: Trajectory, curves: Curves, i: number, out: 
 function writeLifetime(trajectory: Trajectory, curves: Curves, i: number, out: Float64Array[]): void {
   const { margin, lifetime } = curves;
   margin.follow(trajectory);
-  const distance = margin.at(margin.lowest());
-  out[7][i] = distance;
-  const stable = out[3][i] >= 0;
-  out[10][i] = stable ? STABLE : distance > 0 ? METASTABLE : UNSTABLE;
-  if (stable || !(out[0][i] < 0)) return;
+  out[7][i] = margin.at(margin.lowest());
+  if (out[3][i] >= 0 || !(out[0][i] < 0)) return;
   lifetime.follow(trajectory);
   const t = lifetime.lowest();
   trajectory.visit(t);
   const lambda = trajectory.y[LAMBDA];
   out[8][i] = logProbability(t, lambda) / Math.LN10;
   out[9][i] = (logRate(t, lambda) + LOG_GYR_GPC3) / Math.LN10;
+}
+
+/** Instability is final; anything better is known only where the couplings stay perturbative up to the cut-off. */
+function classify(lowestQuartic: number, distance: number, perturbativityLost: number): number {
+  if (lowestQuartic < 0 && distance <= 0) return UNSTABLE;
+  if (!Number.isNaN(perturbativityLost)) return NOT_PERTURBATIVE;
+  return lowestQuartic >= 0 ? STABLE : METASTABLE;
 }

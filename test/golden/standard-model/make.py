@@ -205,6 +205,8 @@ def point(name, Mt, cutoff, loops, start):
     if len(lost):
         t1 = lost[0]
     out.update(vacuum(solution, log(Mt), t1, loops))
+    if len(lost) and out["vacuumClass"] < 2:
+        out["vacuumClass"] = 3
     print(name, solution.status, f"{drift:.1e}", out["vacuumClass"], file=sys.stderr)
     return {"name": name, "Mt": Mt, "cutoff": cutoff, "loops": loops, "start": start, "expected": out}
 

@@ -70,6 +70,12 @@ describe('vacuum-stability', () => {
     const lenient = judge('vacuum-stability', unstable, { accept: 'metastable' });
     expect([lenient.outcome, lenient.margin]).toEqual([1, -0.04]);
   });
+
+  it('says nothing where perturbativity is lost before the fate is known', () => {
+    const strong = { ...vacuum, vacuumClass: 3, lambdaEffMin: 0.2, metastabilityMargin: 0.3 };
+    expect(judge('vacuum-stability', strong)).toMatchObject({ outcome: 2, margin: NaN });
+    expect(judge('vacuum-stability', strong).words).toMatch(/^not perturbative/);
+  });
 });
 
 describe('measured numbers (Particle Data Group 2024)', () => {
