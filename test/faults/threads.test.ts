@@ -60,8 +60,11 @@ describe('a coordinator that is stopped', () => {
     const plan = linePlan(POINTS, SLOW);
     const first = startWork(store.path, plan, { threads: 2 });
     await committed(first, 0);
+    // Held, so that it is surely at work while the other asks.
+    first.signal('SIGSTOP');
     const second = startWork(store.path, plan, { threads: 2 });
     expect(await second.exit).toBe(3);
+    first.signal('SIGCONT');
     expect(second.err()).toContain(`process ${first.pid} `);
     expect(second.err()).toContain('Nothing was changed');
     expect(await resultOf(first)).toMatchObject({ state: 'complete', digest: undisturbed });
