@@ -77,7 +77,8 @@ async function launchAndServe(
         remark(session, `dashboard ${pageOf(dashboard, run)}`);
       },
     );
-    const page = dashboard && { dashboard: pageOf(dashboard, facts.run) };
+    const stays = dashboard !== undefined && !session.stopSignal().aborted;
+    const page = dashboard && stays ? { dashboard: pageOf(dashboard, facts.run) } : {};
     await answer<LaunchFacts>(session, options, { ...facts, ...page }, launchText);
     endIfStopped(facts, session);
     if (dashboard) await keepOpen(session);
