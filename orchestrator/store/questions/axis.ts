@@ -5,22 +5,25 @@ export type BinnedAxis = DensityGrid['x'];
 
 /** The axis for a range; one that is empty or a single value gets some width, so that it can be drawn.
  *  @throws UserMistake for a chosen range that no axis can have */
-export function axisOf(request: AxisRequest, range: readonly number[], bins: number): BinnedAxis {
+export function axisOf(request: AxisRequest, range: readonly [number, number], bins: number): BinnedAxis {
   if (request.range !== null) checkRange(request);
   const [low, high] = withWidth(range[0], range[1], request.scale);
   return { low, high, scale: request.scale, bins };
 }
 
-/** Bin of a value, or -1 outside the range. A bin contains its lower edge; the last one both. */
-export function binOf(axis: BinnedAxis): (value: number) => number {
+/** The bin of every value, -1 outside the range. A bin contains its lower edge; the last one both. */
+export function findBins(axis: BinnedAxis, values: Float64Array, count: number, out: Int32Array): void {
   const { low, high, bins } = axis;
-  const place = axis.scale === 'log' ? Math.log10 : (value: number) => value;
-  const start = place(low);
-  const width = place(high) - start;
-  return (value) => {
-    if (!(value >= low && value <= high)) return -1;
-    return Math.min(bins - 1, Math.floor(((place(value) - start) / width) * bins));
-  };
+  const isLog = axis.scale === 'log';
+  const start = isLog ? Math.log10(low) : low;
+  const width = (isLog ? Math.log10(high) : high) - start;
+  for (let i = 0; i < count; i++) {
+    const value = values[i];
+    const place = isLog ? Math.log10(value) : value;
+    // Rounding of the logarithm must not push an edge outside.
+    const bin = Math.max(0, Math.min(bins - 1, Math.floor(((place - start) / width) * bins)));
+    out[i] = value >= low && value <= high ? bin : -1;
+  }
 }
 
 function withWidth(low: number, high: number, scale: AxisRequest['scale']): [number, number] {

@@ -1,6 +1,6 @@
 import { UserMistake } from '../../mistakes.js';
 import type { AxisRequest, DensityGrid, Reading, View } from '../reading.js';
-import { axisOf, binOf } from './axis.js';
+import { axisOf, findBins } from './axis.js';
 import type { BinnedAxis } from './axis.js';
 import { visit } from './visit.js';
 import type { Marked } from './visit.js';
@@ -20,46 +20,42 @@ export function densityOf(
   const painter = painterOf(colourColumn?.labels, colour !== null, bins[0] * bins[1]);
   const counts = new Float64Array(bins[0] * bins[1]);
   const columns = [x.column, y.column, ...(colour === null ? [] : [colour])];
+  const cells = cellFinder(ax, ay);
   let undrawn = 0;
   for (const batch of visit(reading, view, columns)) {
-    const cells = cellsOf(batch, batch.columns.get(x.column)!, batch.columns.get(y.column)!, ax, ay);
+    const { count, passes } = batch;
+    const cell = cells(batch.columns.get(x.column)!, batch.columns.get(y.column)!, count);
     const shades = colour === null ? undefined : batch.columns.get(colour)!;
-    for (let i = 0; i < batch.count; i++) {
-      if (cells[i] >= 0) {
-        counts[cells[i]]++;
-        if (shades !== undefined) painter.add(cells[i], shades[i]);
-      } else if (cells[i] === UNDRAWN) undrawn++;
+    for (let i = 0; i < count; i++) {
+      if (passes[i] === 0) continue;
+      if (cell[i] < 0) undrawn++;
+      else counts[cell[i]]++;
     }
+    if (shades !== undefined) painter.add(batch, cell, shades);
   }
   return { x: ax, y: ay, counts, ...painter.result(), undrawn };
 }
 
-const FILTERED_OUT = -1;
-const UNDRAWN = -2;
+type FindCells = (x: Float64Array, y: Float64Array, count: number) => Int32Array;
 
-function cellsOf(
-  batch: Marked,
-  x: Float64Array,
-  y: Float64Array,
-  ax: BinnedAxis,
-  ay: BinnedAxis,
-): Int32Array {
-  const cells = new Int32Array(batch.count);
-  const [bx, by] = [binOf(ax), binOf(ay)];
-  for (let i = 0; i < batch.count; i++) {
-    if (batch.passes[i] === 0) {
-      cells[i] = FILTERED_OUT;
-      continue;
-    }
-    const column = bx(x[i]);
-    const row = by(y[i]);
-    cells[i] = column >= 0 && row >= 0 ? row * ax.bins + column : UNDRAWN;
-  }
-  return cells;
+/** The cell of every point of a batch, -1 where it cannot be drawn; good until the next batch. */
+function cellFinder(ax: BinnedAxis, ay: BinnedAxis): FindCells {
+  let columns = new Int32Array(0);
+  let rows = new Int32Array(0);
+  return (x, y, count) => {
+    if (columns.length < count) [columns, rows] = [new Int32Array(count), new Int32Array(count)];
+    findBins(ax, x, count, columns);
+    findBins(ay, y, count, rows);
+    for (let i = 0; i < count; i++)
+      columns[i] = (columns[i] | rows[i]) < 0 ? -1 : rows[i] * ax.bins + columns[i];
+    return columns;
+  };
 }
 
+type Range = readonly [number, number];
+
 interface Painter {
-  add(cell: number, value: number): void;
+  add(batch: Marked, cell: Int32Array, shades: Float64Array): void;
   result(): Pick<DensityGrid, 'mean' | 'classes'>;
 }
 
@@ -71,8 +67,12 @@ function painterOf(labels: readonly string[] | undefined, coloured: boolean, cel
 function classPainter(labels: readonly string[], cells: number): Painter {
   const counts = new Float64Array(labels.length * cells);
   return {
-    add(cell, value) {
-      if (value >= 0 && value < labels.length) counts[value * cells + cell]++;
+    add({ count, passes }, cell, shades) {
+      for (let i = 0; i < count; i++) {
+        const value = shades[i];
+        if (passes[i] === 1 && cell[i] >= 0 && value >= 0 && value < labels.length)
+          counts[value * cells + cell[i]]++;
+      }
     },
     result: () => ({ classes: { labels, counts } }),
   };
@@ -82,10 +82,12 @@ function meanPainter(cells: number): Painter {
   const sums = new Float64Array(cells);
   const numbers = new Float64Array(cells);
   return {
-    add(cell, value) {
-      if (!Number.isFinite(value)) return;
-      sums[cell] += value;
-      numbers[cell]++;
+    add({ count, passes }, cell, shades) {
+      for (let i = 0; i < count; i++) {
+        if (passes[i] === 0 || cell[i] < 0 || !Number.isFinite(shades[i])) continue;
+        sums[cell[i]] += shades[i];
+        numbers[cell[i]]++;
+      }
     },
     // 0 / 0 is the NaN of a cell without a finite value.
     result: () => ({ mean: sums.map((sum, cell) => sum / numbers[cell]) }),
@@ -99,10 +101,8 @@ function axesOf(
   y: AxisRequest,
   bins: readonly [number, number],
 ): [BinnedAxis, BinnedAxis] {
-  const ranges = [
-    [Infinity, -Infinity],
-    [Infinity, -Infinity],
-  ];
+  const nothing: Range = [Infinity, -Infinity];
+  const ranges: [Range, Range] = [nothing, nothing];
   if (x.range === null || y.range === null) {
     for (const batch of visit(reading, view, [x.column, y.column])) widen(ranges, batch, x, y);
   }
@@ -110,19 +110,24 @@ function axesOf(
 }
 
 /** A point counts for the ranges only if it can be drawn at all: on a chosen range, and positive where logarithmic. */
-function widen(ranges: number[][], batch: Marked, x: AxisRequest, y: AxisRequest): void {
+function widen(ranges: [Range, Range], batch: Marked, x: AxisRequest, y: AxisRequest): void {
+  const { count, passes } = batch;
   const xs = batch.columns.get(x.column)!;
   const ys = batch.columns.get(y.column)!;
   const [xLow, xHigh] = limitsOf(x);
   const [yLow, yHigh] = limitsOf(y);
-  for (let i = 0; i < batch.count; i++) {
-    if (batch.passes[i] === 0) continue;
-    if (!(xs[i] >= xLow && xs[i] <= xHigh && ys[i] >= yLow && ys[i] <= yHigh)) continue;
-    if (xs[i] < ranges[0][0]) ranges[0][0] = xs[i];
-    if (xs[i] > ranges[0][1]) ranges[0][1] = xs[i];
-    if (ys[i] < ranges[1][0]) ranges[1][0] = ys[i];
-    if (ys[i] > ranges[1][1]) ranges[1][1] = ys[i];
+  let [[x0, x1], [y0, y1]] = ranges;
+  for (let i = 0; i < count; i++) {
+    const a = xs[i];
+    const b = ys[i];
+    if (passes[i] === 0 || !(a >= xLow && a <= xHigh && b >= yLow && b <= yHigh)) continue;
+    if (a < x0) x0 = a;
+    if (a > x1) x1 = a;
+    if (b < y0) y0 = b;
+    if (b > y1) y1 = b;
   }
+  ranges[0] = [x0, x1];
+  ranges[1] = [y0, y1];
 }
 
 function limitsOf(axis: AxisRequest): readonly [number, number] {
