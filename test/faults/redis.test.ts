@@ -190,6 +190,24 @@ describe.skipIf(noRedis)('with redis-server on the PATH', () => {
       expect(await resultOf(launch())).toMatchObject(complete());
     });
 
+    test('is left as it was found, but for what vanishes by itself', async () => {
+      await serve();
+      await worker();
+      expect(await resultOf(launch())).toMatchObject(complete());
+      const redis = new Redis(server.url);
+      undo.push(() => redis.disconnect());
+      const left: string[] = [];
+      for (const key of await redis.keys('*')) if ((await redis.ttl(key)) < 0) left.push(key);
+      // The books of the queue and the roll of its workers, whatever the number of runs.
+      expect(left.sort()).toEqual([
+        'bull:trigpoint:events',
+        'bull:trigpoint:id',
+        'bull:trigpoint:meta',
+        'trigpoint-workers',
+      ]);
+      expect(await redis.xlen((await redis.keys('trigpoint-results:*'))[0] ?? 'none')).toBe(0);
+    });
+
     test('that is not there is a clear refusal', async () => {
       await serve();
       await server.kill();

@@ -13,7 +13,8 @@ process.on('SIGINT', () => stop.abort());
 try {
   const store = openForWriting(order.store);
   try {
-    console.log(JSON.stringify(await work(store)));
+    const done = await work(store);
+    console.log(JSON.stringify({ ...done, peakMegabytes: process.resourceUsage().maxRSS / 1024 }));
   } finally {
     store.close();
   }

@@ -48,7 +48,7 @@ export function lineRun(plan: Plan): NewRun {
     scanFile: { name: 'line.yaml', text: '' },
     fingerprints: { plan: 'p', task: 't', model: 'm', modules: {}, constraints: {}, sampling: 's' },
     environment: ENVIRONMENT,
-    columns: COLUMNS,
+    columns: columnsOf(plan),
     wanted: plan.strata.reduce((sum, part) => sum + part.points, 0),
   };
 }
@@ -76,11 +76,12 @@ const ENVIRONMENT: Environment = {
   cores: 1,
 };
 const plain = { unit: '1', symbol: '', meaning: '' };
-const COLUMNS: readonly ColumnRecord[] = [
-  { name: 'x', kind: 'input', ...plain },
-  { name: 'square', kind: 'quantity', ...plain },
-  { name: 'successor', kind: 'quantity', ...plain },
-  { name: 'outcome(even)', kind: 'outcome', constraint: 'even', ...plain },
-  { name: 'margin(even)', kind: 'margin', constraint: 'even', ...plain },
-  { name: 'likelihood(even)', kind: 'likelihood', constraint: 'even', ...plain },
-];
+function columnsOf({ keep }: Plan): ColumnRecord[] {
+  return [
+    { name: 'x', kind: 'input', ...plain },
+    ...keep.map((name) => ({ name, kind: 'quantity' as const, ...plain })),
+    { name: 'outcome(even)', kind: 'outcome', constraint: 'even', ...plain },
+    { name: 'margin(even)', kind: 'margin', constraint: 'even', ...plain },
+    { name: 'likelihood(even)', kind: 'likelihood', constraint: 'even', ...plain },
+  ];
+}
