@@ -10,13 +10,13 @@ await runProgram(process.argv.slice(2), {
   redis: process.env.REDIS_URL || undefined,
   debug: Boolean(process.env.TRIGPOINT_DEBUG),
   cores: availableParallelism(),
-  async serveDashboard(questions, { port, host }) {
+  async serveDashboard({ questions, store }, { port, host }) {
     // Loaded only where it is wanted: most commands never open it.
     const { serve } = await import('../dashboard/serve.js');
     const onError = (error: unknown) => {
       const text = error instanceof Error ? (error.stack ?? error.message) : String(error);
       process.stderr.write(`a page could not be made: ${text}\n`);
     };
-    return serve({ questions, commands: dashboardCommands(questions), onError }, port, host);
+    return serve({ questions, commands: dashboardCommands(questions, store), onError }, port, host);
   },
 });

@@ -1,4 +1,4 @@
-import type { DashboardCommands } from '../../dashboard/commands.js';
+import type { CommandLine, DashboardCommands } from '../../dashboard/commands.js';
 import { exportCsv } from '../export/csv.js';
 import type { AsyncQuestions } from '../store/reading.js';
 import type { RunRecord } from '../store/records.js';
@@ -6,11 +6,13 @@ import { catalogueOf } from './catalogue-of-run.js';
 import { filterMistake } from './check-filter.js';
 import { describeExport } from './describe-export.js';
 import { planOf } from './new-run.js';
+import { USUAL_STORE } from './read-store.js';
 import { quoted } from './shell.js';
 import { storedPoint } from './stored-point.js';
 
-/** What the dashboard asks of the commands, over the reader thread of one store. */
-export function dashboardCommands(questions: AsyncQuestions): DashboardCommands {
+/** What the dashboard asks of the commands, over the reader thread of one store.
+ *  @param store path of the store, for the command lines that it shows */
+export function dashboardCommands(questions: AsyncQuestions, store = USUAL_STORE): DashboardCommands {
   return {
     async catalogue(id) {
       const run = await questions.run(id);
@@ -32,29 +34,22 @@ export function dashboardCommands(questions: AsyncQuestions): DashboardCommands 
     provenance: (id) => describeExport(questions, { run: id, where: '' }, [], `run-${id}.csv`),
     async reproduce(id) {
       const run = await questions.run(id);
-      return run === undefined ? [] : commandLines(run);
+      return run === undefined ? [] : commandLines(run, store);
     },
   };
 }
 
-function commandLines(run: RunRecord) {
-  const launched = {
-    command: `npx trigpoint launch ${quoted(run.scanFile.name)}`,
-    does: 'runs the scan file: the same plan, the same digest',
-  };
+function commandLines(run: RunRecord, store: string): CommandLine[] {
+  const where = store === USUAL_STORE ? '' : ` --store ${quoted(store)}`;
+  const line = (words: string, does: string) => ({ command: `npx trigpoint ${words}${where}`, does });
+  const launched = line(
+    `launch ${quoted(run.scanFile.name)}`,
+    'runs the scan file: the same plan, the same digest',
+  );
   return [
     ...(run.relation === 'launch' && run.scanFile.name !== '' ? [launched] : []),
-    {
-      command: `npx trigpoint rerun ${run.id}`,
-      does: 'computes every point of the stored plan again and compares the digests',
-    },
-    {
-      command: `npx trigpoint verify ${run.id} --sample 0.05`,
-      does: 'computes every twentieth point again and compares it bit by bit',
-    },
-    {
-      command: `npx trigpoint export ${run.id} --out run-${run.id}.csv`,
-      does: 'writes all points, with a description beside them',
-    },
+    line(`rerun ${run.id}`, 'computes every point of the stored plan again and compares the digests'),
+    line(`verify ${run.id} --sample 0.05`, 'computes every twentieth point again and compares it bit by bit'),
+    line(`export ${run.id} --out run-${run.id}.csv`, 'writes all points, with a description beside them'),
   ];
 }

@@ -3,6 +3,9 @@ import { UserMistake } from '../mistakes.js';
 import { openForReading } from '../store/open.js';
 import type { Reading } from '../store/reading.js';
 
+/** Where runs are kept unless somebody says otherwise. */
+export const USUAL_STORE = './trigpoint.sqlite';
+
 /** Opens a store to read for as long as an answer takes.
  *  @throws UserMistake where there is no such file */
 export async function withReading<T>(path: string, ask: (reading: Reading) => T | Promise<T>): Promise<T> {

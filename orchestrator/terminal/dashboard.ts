@@ -21,7 +21,7 @@ export async function openDashboard(
 ): Promise<OpenDashboard> {
   mustExist(store);
   const questions = startReader(store);
-  const listen = (port: number) => session.serveDashboard(questions, { port, host: options.bind });
+  const listen = (port: number) => session.serveDashboard({ questions, store }, { port, host: options.bind });
   try {
     const dashboard = await onSomePort(options, listen);
     return {

@@ -1,6 +1,7 @@
 import { Option } from 'commander';
 import type { Command } from 'commander';
 import { wholeNumber } from '../commands/assignments.js';
+import { USUAL_STORE } from '../commands/read-store.js';
 import type { OpenDispatcher } from '../dispatch/dispatcher.js';
 import { openThreads } from '../dispatch/threads.js';
 import { UserMistake } from '../mistakes.js';
@@ -9,7 +10,6 @@ import type { JsonOption, Session } from './session.js';
 
 /** Options that several commands share, each in one place. */
 
-export const STORE = './trigpoint.sqlite';
 export const PORT = 4671;
 
 export interface StoreOption {
@@ -29,7 +29,7 @@ export interface PlaceOptions {
 export type FactOptions = JsonOption & StoreOption;
 
 export function withStore(command: Command): Command {
-  return command.option('--store <file>', 'the store', STORE);
+  return command.option('--store <file>', 'the store', USUAL_STORE);
 }
 
 export function withJson(command: Command): Command {

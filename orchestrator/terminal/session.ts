@@ -4,7 +4,7 @@ import type { Screen } from './progress-bar.js';
 
 /** Starts the dashboard on a store; handed in by cli.ts, the only place that knows it. */
 export type ServeDashboard = (
-  questions: AsyncQuestions,
+  what: { readonly questions: AsyncQuestions; readonly store: string },
   place: { readonly port: number; readonly host: string },
 ) => Promise<{ readonly address: string; close(): Promise<void> }>;
 
