@@ -5,8 +5,8 @@ import express, { type Router } from 'express';
 /** Style, icon and the two scripts, read once: they are small and part of this version. */
 export function assetRoutes(): Router {
   const router = express.Router();
-  for (const { address, type, path } of ASSETS) {
-    const body = readFileSync(path);
+  for (const { address, type, paths } of ASSETS) {
+    const body = Buffer.concat(paths.map((path) => readFileSync(path)));
     router.get(address, (_request, response) => {
       response.type(type).setHeader('Cache-Control', 'no-cache');
       response.send(body);
@@ -17,9 +17,14 @@ export function assetRoutes(): Router {
 
 const packages = createRequire(import.meta.url);
 
+const own = (name: string): URL => new URL(`./assets/${name}`, import.meta.url);
+
+/** Parts of the one style sheet, in this order. */
+const STYLE = ['base', 'sheets', 'tables', 'view', 'facts', 'plots'];
+
 const ASSETS = [
-  { address: '/assets/style.css', type: 'css', path: new URL('./assets/style.css', import.meta.url) },
-  { address: '/assets/trigpoint.svg', type: 'svg', path: new URL('./assets/trigpoint.svg', import.meta.url) },
-  { address: '/assets/htmx.js', type: 'js', path: packages.resolve('htmx.org/dist/htmx.min.js') },
-  { address: '/assets/sse.js', type: 'js', path: packages.resolve('htmx-ext-sse/dist/sse.min.js') },
+  { address: '/assets/style.css', type: 'css', paths: STYLE.map((part) => own(`style/${part}.css`)) },
+  { address: '/assets/trigpoint.svg', type: 'svg', paths: [own('trigpoint.svg')] },
+  { address: '/assets/htmx.js', type: 'js', paths: [packages.resolve('htmx.org/dist/htmx.min.js')] },
+  { address: '/assets/sse.js', type: 'js', paths: [packages.resolve('htmx-ext-sse/dist/sse.min.js')] },
 ];

@@ -37,7 +37,7 @@ function panel(trace: CouplingTrace, group: readonly number[], unit: string): Co
     colour: LINE_COLOURS[place % LINE_COLOURS.length],
   }));
   const all = series.flatMap((one) => one.values).filter((value) => Number.isFinite(value));
-  const [low, high] = padded(Math.min(...all, 0), Math.max(...all, 0), 'linear');
+  const [low, high] = rangeOf(all, unit);
   const x: Axis = {
     label: parseSymbol('\\mu'),
     unit: unitLabel('GeV'),
@@ -52,6 +52,12 @@ function panel(trace: CouplingTrace, group: readonly number[], unit: string): Co
     summary: `Running of ${names} against the scale, from ${power(x.low)} to ${power(x.high)} GeV. The values are in the table of couplings.`,
     draw: (setting) => linesPlot(setting, { x, y, xs: trace.scales, series }),
   };
+}
+
+/** Couplings are seen against zero; a mass parameter, which may be far from it, against itself. */
+function rangeOf(values: readonly number[], unit: string): readonly [number, number] {
+  const origin = unit === '1' ? [0] : [];
+  return padded(Math.min(...values, ...origin), Math.max(...values, ...origin), 'linear');
 }
 
 function largest(values: readonly (number | null)[]): number {

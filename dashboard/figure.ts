@@ -201,9 +201,9 @@ function rangeOf(values: Float64Array, scale: 'linear' | 'log'): readonly [numbe
   return padded(low, high, scale);
 }
 
-/** Some three points a cell: fewer would show noise, more would blur edges. */
+/** Some two points a cell: fewer would show noise, more would blur edges. */
 function cellsFor(points: number): readonly [number, number] {
-  const across = Math.round(Math.min(160, Math.max(16, Math.sqrt((points / 3) * 1.3))));
+  const across = Math.round(Math.min(160, Math.max(16, Math.sqrt((points / 2) * 1.3))));
   return [across, Math.round(across / 1.3)];
 }
 

@@ -36,7 +36,7 @@ export type DrawingChoice = (typeof DRAWINGS)[number];
 
 /** A field whose content cannot be used, to be said beside it. */
 export interface FieldMistake {
-  readonly field: keyof RunView;
+  readonly field: keyof RunView | 'address';
   readonly expected: string;
   readonly found: string;
   /** Where in the text, for the filter. */
@@ -53,6 +53,10 @@ export function readView(
   const mistakes: FieldMistake[] = [];
   const names = new Map(columns.map((column) => [column.name, column]));
   const report = (mistake: FieldMistake): void => void mistakes.push(mistake);
+  const strange = [...query.keys()].find((name) => !PARTS.has(name));
+  if (strange !== undefined) {
+    report({ field: 'address', expected: `only the parts ${[...PARTS].join(', ')}`, found: quoted(strange) });
+  }
 
   const column = (field: 'x' | 'y' | 'colour', fallback: string): string => {
     const asked = query.get(field);
@@ -85,6 +89,13 @@ export function readView(
   };
   return { view, mistakes };
 }
+
+/** All that an address of a view may hold; `size` is for figures alone. */
+const PARTS = new Set(
+  'where only quantity from to x y xScale yScale xFrom xTo yFrom yTo colour drawing column page size'.split(
+    ' ',
+  ),
+);
 
 /** The whole filter as one expression; empty for all points. */
 export function wholeFilter(view: RunView): string {

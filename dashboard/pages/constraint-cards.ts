@@ -3,6 +3,7 @@ import type { ConstraintRecord } from '../../orchestrator/store/records.js';
 import type { Catalogue, ConstraintInfo } from '../commands.js';
 import { html, type Part, type Safe } from '../html.js';
 import { valueHtml } from '../numbers.js';
+import { proseHtml } from '../prose.js';
 import { symbolHtml } from '../symbols.js';
 import { sourceHtml } from './source.js';
 
@@ -24,11 +25,11 @@ export function constraintCards(
 function card(constraint: ConstraintRecord, own: ConstraintFacts, info: ConstraintInfo | undefined): Safe {
   return html`<article class="constraint outcome-${own.outcome}" id="constraint-${constraint.name}">
     <h3>${info?.title ?? constraint.name} <span class="outcome">${own.outcome.replace('-', ' ')}</span></h3>
-    <p class="detail">${own.detail}</p>
+    <p class="detail">${proseHtml(own.detail)}</p>
     <dl class="gauges">
       <div class="gauge">
         <dt>Margin</dt>
-        <dd>${valueHtml(own.margin, 4)}<span class="under">${info?.marginScale}</span></dd>
+        <dd>${valueHtml(own.margin, 4)}<span class="under">${info && proseHtml(info.marginScale)}</span></dd>
       </div>
       ${
         own.logLikelihood !== null &&
@@ -68,11 +69,11 @@ function background(constraint: ConstraintRecord, info: ConstraintInfo): Safe {
       </div>
       <div>
         <dt>Holds</dt>
-        <dd>${info.validity}</dd>
+        <dd>${proseHtml(info.validity)}</dd>
       </div>
       <div>
         <dt>Neglects</dt>
-        <dd>${info.neglects}</dd>
+        <dd>${proseHtml(info.neglects)}</dd>
       </div>
       <div>
         <dt>Sources</dt>

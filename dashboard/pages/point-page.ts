@@ -3,6 +3,7 @@ import type { Catalogue, StoredPoint } from '../commands.js';
 import { couplingPanels } from '../couplings-figure.js';
 import { html, raw, type Part, type Safe } from '../html.js';
 import { NARROW, WIDE, type Size } from '../plots/drawing.js';
+import { proseHtml } from '../prose.js';
 import { constraintCards } from './constraint-cards.js';
 import { layout } from './layout.js';
 import { couplingTable, inputTable, quantityTables, storedTable } from './point-tables.js';
@@ -71,7 +72,7 @@ export function verdictWords(parts: PointPageParts): Safe {
             html`<li>
               <a href="#constraint-${name}"
                 >${catalogue?.constraints.find((one) => one.name === name)?.title ?? name}</a
-              >: ${facts.constraints[name].detail}
+              >: ${proseHtml(facts.constraints[name].detail)}
             </li>`,
         )}
       </ul>`;

@@ -3,6 +3,7 @@ import type { ColumnRecord, RunRecord } from '../../orchestrator/store/records.j
 import type { Catalogue, InputInfo, QuantityInfo, StoredPoint } from '../commands.js';
 import { html, type Part, type Safe } from '../html.js';
 import { valueHtml } from '../numbers.js';
+import { proseHtml } from '../prose.js';
 import { symbolHtml, unitHtml } from '../symbols.js';
 import { variedInputs } from '../usual-view.js';
 import { classHtml } from './points-table.js';
@@ -106,7 +107,7 @@ function quantityRow(name: string, facts: PointFacts, info: QuantityInfo | undef
     ${nameCell(name, info)}
     <td class="number">${label ?? valueHtml(value, 8)}</td>
     <td>${unitHtml(unit)}</td>
-    <td class="notes">${notes.map((note) => html`<p>${note}</p>`)}</td>
+    <td class="notes">${notes.map((note) => html`<p>${proseHtml(String(note))}</p>`)}</td>
   </tr>`;
 }
 

@@ -85,7 +85,7 @@ function figurePart(parts: ResultParts): Part {
       <p>${figure.caption} ${figure.remark}.</p>
       <p>
         Run ${run.id},
-        ${run.title}${
+        “${run.title}”${
           run.digest
             ? html`; digest <code title="${run.digest}">${digestShort(run.digest)}</code>`
             : html`; no digest yet`

@@ -53,7 +53,9 @@ export function runPage(parts: RunPageParts): string {
 }
 
 function identity({ run }: RunPageParts): Safe {
-  return html`<p class="identity">
+  const refresh = html`hx-get="/runs/${run.id}" hx-trigger="sse:done" hx-select="#identity"
+  hx-select-oob="#provenance" hx-swap="outerHTML" hx-disinherit="*"`;
+  return html`<p id="identity" class="identity" ${mayMove(run) && refresh}>
     Run ${run.id} · ${modelName(run)} · ${relationHtml(run)} ${momentText(run.started)} ·
     ${
       run.digest

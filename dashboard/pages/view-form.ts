@@ -19,6 +19,7 @@ export function viewForm(parts: FormParts): Safe {
     action="/runs/${parts.run}#results"
     aria-label="What to show"
   >
+    ${said(parts.mistakes, 'address')}
     <fieldset>
       <legend>Which points</legend>
       ${onlyFields(parts)} ${rangeFields(parts)} ${whereField(parts)}
@@ -205,7 +206,7 @@ function invalid(mistakes: readonly FieldMistake[], field: keyof RunView): Part 
 }
 
 /** What is wrong with a field, beside it: expected, found, and for a text the place. */
-function said(mistakes: readonly FieldMistake[], field: keyof RunView, text = ''): Part {
+function said(mistakes: readonly FieldMistake[], field: FieldMistake['field'], text = ''): Part {
   const own = mistakes.filter((mistake) => mistake.field === field);
   return (
     own.length > 0 &&

@@ -11,7 +11,7 @@ export const CLASS_COLOURS: Readonly<Record<Light, readonly string[]>> = {
 
 export const INK = '#1c232b';
 export const PAPER = '#fffefa';
-export const FAINT = '#8c8a80';
+export const FAINT = '#6b6d63';
 
 /** From paper to ink: equal steps look equal, and lightness alone tells the order. */
 const SEQUENCE: Readonly<Record<Light, readonly string[]>> = {

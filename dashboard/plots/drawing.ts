@@ -37,7 +37,7 @@ const FONTS =
  *  need no style element that a content policy would forbid. */
 export function drawing(setting: Setting, ...body: readonly string[]): string {
   const { width, height, text } = setting.size;
-  const lines = setting.notes.flatMap((note) => wrap(note, Math.floor(width / (text * 0.4))));
+  const lines = setting.notes.flatMap((note) => wrap(note, Math.floor((width - 24) / (text * 0.78 * 0.47))));
   const total = height + (lines.length > 0 ? lines.length * text * 1.25 + 8 : 0);
   return element(
     'svg',

@@ -38,7 +38,7 @@ export function linesPlot(setting: Setting, spec: LinesSpec): string {
   );
 }
 
-const DASHES = [undefined, '7 3', '2 3', '10 3 2 3', '5 2', '1 2', '12 4'];
+const DASHES = [undefined, '8 4', '2 3', '10 3 2 3', '5 2.5', '14 4', '4 2 1 2'];
 
 function zeroLine(y: Axis, box: Box, yAt: (value: number) => number): string {
   if (y.scale === 'log' || y.low >= 0 || y.high <= 0) return '';

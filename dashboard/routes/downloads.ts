@@ -1,4 +1,3 @@
-import { once } from 'node:events';
 import express, { type Request, type Response, type Router } from 'express';
 import type { DashboardDeps } from '../app.js';
 import { captionLines } from '../pages/results.js';
@@ -17,6 +16,7 @@ export function downloadRoutes(deps: DashboardDeps): Router {
     const asked = await askedWell(request, deps);
     const columns = asked.columns.map((column) => column.name);
     response.type('csv');
+    if (request.method === 'HEAD') return void response.end();
     await streamText(response, commands.csv({ run: asked.run.id, where: asked.where }, columns));
   });
   router.get('/runs/:run/points.csv-metadata.json', async (request, response) => {
@@ -63,15 +63,19 @@ async function askedWell(request: Request, deps: DashboardDeps): Promise<Asked> 
 /** Writes as fast as the reader reads; a reader who leaves ends the work, an error cuts the connection so that half
  *  a file is not taken for a whole one. */
 async function streamText(response: Response, parts: AsyncIterable<string>): Promise<void> {
-  const gone = once(response, 'close');
+  const gone = new Promise((resolve) => response.once('close', resolve));
   try {
     for await (const part of parts) {
       if (response.destroyed) return;
-      if (!response.write(part)) await Promise.race([once(response, 'drain'), gone]);
+      if (!response.write(part)) await Promise.race([drained(response), gone]);
     }
     response.end();
   } catch (error) {
     if (response.headersSent) response.destroy();
     throw error;
   }
+}
+
+function drained(response: Response): Promise<unknown> {
+  return new Promise((resolve) => response.once('drain', resolve));
 }

@@ -37,6 +37,7 @@ function stream(request: Request, response: Response, live: LiveRuns, run: numbe
     'Cache-Control': 'no-store',
     'X-Accel-Buffering': 'no',
   });
+  if (request.method === 'HEAD') return void response.end();
   response.write(`retry: ${RETRY}\n\n`);
   const teller = new Teller(response);
   const heartbeat = setInterval(() => response.write(': still here\n\n'), HEARTBEAT);

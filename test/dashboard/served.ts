@@ -1,7 +1,4 @@
-import { mkdtempSync, rmSync } from 'node:fs';
 import { request } from 'node:http';
-import { tmpdir } from 'node:os';
-import { join } from 'node:path';
 import { dashboardCommands } from '../../orchestrator/commands/for-dashboard.js';
 import { startReader } from '../../orchestrator/store/reader-thread.js';
 import type { AsyncQuestions } from '../../orchestrator/store/reading.js';
@@ -17,7 +14,7 @@ export interface Dashboard {
   close(): Promise<void>;
 }
 
-export async function dashboardOn(store: string, every?: number): Promise<Dashboard> {
+export async function dashboardOn(store: string, every?: number, port = 0): Promise<Dashboard> {
   const questions = startReader(store);
   const errors: unknown[] = [];
   const deps = {
@@ -26,7 +23,7 @@ export async function dashboardOn(store: string, every?: number): Promise<Dashbo
     onError: (e: unknown) => errors.push(e),
     every,
   };
-  const served = await serve(deps, 0);
+  const served = await serve(deps, port);
   return {
     address: served.address,
     questions,
@@ -36,11 +33,6 @@ export async function dashboardOn(store: string, every?: number): Promise<Dashbo
       await questions.close();
     },
   };
-}
-
-export function emptyFolder(): { readonly path: string; remove(): void } {
-  const path = mkdtempSync(join(tmpdir(), 'trigpoint-dashboard-'));
-  return { path, remove: () => rmSync(path, { recursive: true, force: true }) };
 }
 
 export interface Answer {

@@ -32,7 +32,7 @@ describe('the view in the address', () => {
   it('comes back the same from the address it makes', () => {
     const address =
       'where=Mt+%3C+172&only=surviving&only=vacuumClass+%3D%3D+1&quantity=Mh&from=120&to=&quantity=margin(vacuum-stability)' +
-      '&from=-1&to=2e3&x=Mt&y=margin(vacuum-stability)&yScale=log&colour=&drawing=cells&column=Mh&page=3';
+      '&from=-1&to=2e3&xFrom=150&xTo=2e2&x=Mt&y=margin(vacuum-stability)&yScale=log&colour=&drawing=cells&column=Mh&page=3';
     const first = read(address);
     expect(first.mistakes).toEqual([]);
     expect(read(viewQuery(first.view))).toEqual(first);
@@ -62,6 +62,9 @@ describe('the view in the address', () => {
     ['quantity=Mh&from=a&to=', 'ranges', '“a”'],
     ['quantity=&from=1&to=', 'ranges', 'nothing'],
     ['column=zzz', 'columns', '“zzz”'],
+    ['xFrom=3&xTo=1', 'xRange', '“3” and “1”'],
+    ['yFrom=3', 'yRange', '“3” and nothing'],
+    ['wher=Mt', 'address', '“wher”'],
     ['page=-1', 'page', '“-1”'],
     ['page=1e9', 'page', '“1e9”'],
   ])('says what is wrong in %s, and shows the usual view', (query, field, found) => {
