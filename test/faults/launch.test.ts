@@ -114,9 +114,10 @@ describe('a launch', () => {
   test.skipIf(noRedis)('over a fleet of worker processes gives the same digest', async () => {
     const server = await redisServer({ appendOnly: false });
     try {
-      const worker = program([CLI, 'worker', '--redis', server.url, '--threads', '2']);
+      const worker = program([CLI, 'worker', '--redis', server.url, '--workers', '2']);
+      await worker.says(/takes chunks/);
       expect(await facts(launch(store, '--redis', server.url))).toMatchObject(sameAsUndisturbed());
-      worker.signal('SIGTERM');
+      worker.signal('SIGINT');
       expect(await worker.exit).toBe(0);
     } finally {
       await server.stop();
