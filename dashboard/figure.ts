@@ -10,7 +10,7 @@ import { scatterPlot, type Colouring } from './plots/scatter.js';
 import { html, type Safe } from './html.js';
 import { parseSymbol, symbolHtml, symbolText, unitLabel } from './symbols.js';
 import { plannedRange } from './usual-view.js';
-import type { RunView, ScaleChoice } from './view.js';
+import { axisEnds, type RunView, type ScaleChoice } from './view.js';
 
 export interface FigureRequest {
   readonly run: RunRecord;
@@ -156,8 +156,8 @@ function chosenRange(
   axis: 'x' | 'y',
   column: ColumnRecord,
 ): readonly [number, number] | null {
-  const [from, to] = request.view[`${axis}Range`];
-  if (from !== '') return [Number(from), Number(to)];
+  const ends = axisEnds(request.view[`${axis}Range`]);
+  if (ends) return ends;
   const narrowed = new RegExp(`\\b(${column.name}|stratum|index)\\b`).test(request.where);
   return column.kind === 'input' && !narrowed ? plannedRange(request.run, column.name) : null;
 }

@@ -19,7 +19,7 @@ export function symbolText(tex: string): string {
 
 /** A unit with its powers raised: "GeV^2" or "GeV". Nothing for the unit of a pure number. */
 export function unitLabel(unit: string): Label {
-  return unit === '1' || unit === '' ? [] : parseSymbol(`\\mathrm{${unit}}`);
+  return unit === '1' || unit === '' ? [] : parseSymbol(`\\mathrm{${unit.replace(/\^(-?\d+)/g, '^{$1}')}}`);
 }
 
 export function unitHtml(unit: string): Safe {

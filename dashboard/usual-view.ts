@@ -28,11 +28,12 @@ export function usualView(
   };
 }
 
-/** Inputs varied over a range before those with a measured spread, in order of name. */
-export function variedInputs(run: RunRecord): readonly string[] {
+/** Inputs varied over a range before those with a measured spread, in order of name; of all strata or of one. */
+export function variedInputs(run: RunRecord, stratum?: number): readonly string[] {
   const plan = JSON.parse(run.plan) as Plan;
+  const strata = stratum === undefined ? plan.strata : plan.strata.slice(stratum, stratum + 1);
   const ranged = new Map<string, boolean>();
-  for (const axis of plan.strata.flatMap((stratum) => stratum.vary)) {
+  for (const axis of strata.flatMap((one) => one.vary)) {
     ranged.set(axis.input, (ranged.get(axis.input) ?? false) || axis.kind === 'range');
   }
   const names = [...ranged.keys()].sort();

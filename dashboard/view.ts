@@ -44,7 +44,8 @@ export interface FieldMistake {
   readonly hint?: string;
 }
 
-/** Reads the address of a run page. What cannot be used is left at its default and reported. */
+/** Reads the address of a run page. What cannot be used is reported: a choice is left at its default, a text is kept
+ *  as it was typed, so that it can be mended. */
 export function readView(
   query: URLSearchParams,
   columns: readonly ColumnRecord[],
@@ -97,7 +98,13 @@ const PARTS = new Set(
   ),
 );
 
-/** The whole filter as one expression; empty for all points. */
+/** The ends of an axis as numbers; null where they are not given or cannot be used. */
+export function axisEnds([from, to]: readonly [string, string]): readonly [number, number] | null {
+  const usable = isNumber(from) && isNumber(to) && Number(from) < Number(to);
+  return usable ? [Number(from), Number(to)] : null;
+}
+
+/** The whole filter as one expression; empty for all points. Only for a view without mistakes in it. */
 export function wholeFilter(view: RunView): string {
   const parts = [...view.only, ...view.ranges.map(rangeExpression), view.where].filter((part) => part !== '');
   return parts.length === 1 ? parts[0] : parts.map((part) => `(${part})`).join(' and ');
@@ -180,32 +187,38 @@ function readRanges(
   report: Report,
 ): Range[] {
   const [from, to] = [query.getAll('from'), query.getAll('to')];
-  return query.getAll('quantity').flatMap((quantity, index) => {
-    const range = { quantity, from: (from[index] ?? '').trim(), to: (to[index] ?? '').trim() };
-    if (quantity === '' && range.from === '' && range.to === '') return [];
-    if (!names.has(quantity)) {
-      report({ field: 'ranges', expected: 'a quantity to go with its limits', found: quoted(quantity) });
-      return [];
-    }
-    const odd = [range.from, range.to].find((limit) => limit !== '' && !isNumber(limit));
-    if (odd !== undefined) {
-      report({ field: 'ranges', expected: `a number as a limit of ${quantity}`, found: quoted(odd) });
-      return [];
-    }
-    return range.from === '' && range.to === '' ? [] : [range];
-  });
+  const rows = query.getAll('quantity').map((quantity, index) => ({
+    quantity,
+    from: (from[index] ?? '').trim(),
+    to: (to[index] ?? '').trim(),
+  }));
+  return rows
+    .filter((row) => row.from !== '' || row.to !== '')
+    .map((row) => {
+      const odd = [row.from, row.to].find((limit) => limit !== '' && !isNumber(limit));
+      if (!names.has(row.quantity)) {
+        report({
+          field: 'ranges',
+          expected: 'a quantity to go with its limits',
+          found: quoted(row.quantity),
+        });
+      } else if (odd !== undefined) {
+        report({ field: 'ranges', expected: `a number as a limit of ${row.quantity}`, found: quoted(odd) });
+      }
+      return row;
+    });
 }
 
 function readAxisRange(query: URLSearchParams, axis: 'x' | 'y', report: Report): readonly [string, string] {
   const [from, to] = [(query.get(`${axis}From`) ?? '').trim(), (query.get(`${axis}To`) ?? '').trim()];
   if (from === '' && to === '') return ['', ''];
-  if (isNumber(from) && isNumber(to) && Number(from) < Number(to)) return [from, to];
+  if (axisEnds([from, to])) return [from, to];
   report({
     field: `${axis}Range`,
     expected: 'two numbers, the lower one first, or nothing',
     found: `${quoted(from)} and ${quoted(to)}`,
   });
-  return ['', ''];
+  return [from, to];
 }
 
 function readColumns(

@@ -112,7 +112,7 @@ function evaluatedSections(parts: PointPageParts, evaluated: StoredPoint): Part 
     </section>`,
     html`<section class="sheet" aria-labelledby="inputs-title">
       <h2 id="inputs-title">Inputs</h2>
-      ${inputTable(evaluated.facts, catalogue, run)}
+      ${inputTable(evaluated.facts, catalogue, run, parts.stratum)}
     </section>`,
     html`<section class="sheet" aria-labelledby="quantities-title">
       <h2 id="quantities-title">Quantities</h2>

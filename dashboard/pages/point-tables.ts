@@ -10,8 +10,13 @@ import { classHtml } from './points-table.js';
 import { sourceHtml } from './source.js';
 
 /** All inputs with all their digits, the varied ones first. */
-export function inputTable(facts: PointFacts, catalogue: Catalogue | undefined, run: RunRecord): Safe {
-  const varied = new Set(variedInputs(run));
+export function inputTable(
+  facts: PointFacts,
+  catalogue: Catalogue | undefined,
+  run: RunRecord,
+  stratum: number,
+): Safe {
+  const varied = new Set(variedInputs(run, stratum));
   const names = Object.keys(facts.inputs);
   const ordered = [...names.filter((name) => varied.has(name)), ...names.filter((name) => !varied.has(name))];
   return table(

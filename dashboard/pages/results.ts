@@ -5,7 +5,7 @@ import { html, raw, type Part, type Safe } from '../html.js';
 import { countText, digestShort } from '../numbers.js';
 import { NARROW, WIDE } from '../plots/drawing.js';
 import { percentText } from '../share.js';
-import { viewQuery, wholeFilter, type RunView } from '../view.js';
+import { viewQuery, type RunView } from '../view.js';
 import { pointsTable } from './points-table.js';
 
 export interface ResultParts {
@@ -50,7 +50,7 @@ export function captionLines({ run, where, counts, figure }: Omit<ResultParts, '
 }
 
 function countsLine({ view, where, counts }: ResultParts): Safe {
-  const mistaken = where === '' && wholeFilter(view) !== '';
+  const mistaken = where === '' && (view.where !== '' || view.only.length > 0 || view.ranges.length > 0);
   return html`<div class="sheet counts">
     <p class="count">
       <strong>${countText(counts.points)}</strong> of ${countText(counts.total)} points

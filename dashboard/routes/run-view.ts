@@ -12,7 +12,7 @@ export interface Asked {
   readonly run: RunRecord;
   readonly columns: readonly ColumnRecord[];
   readonly view: RunView;
-  /** The whole filter; empty where it was mistaken. */
+  /** The whole filter; empty where any part of it is mistaken, since half a filter is another filter. */
   readonly where: string;
   readonly mistakes: readonly FieldMistake[];
 }
@@ -21,9 +21,10 @@ export async function askedOf(request: Request, { questions, commands }: Dashboa
   const run = await runOf(request, questions);
   const columns = await questions.columns(run.id);
   const { view, mistakes } = readView(queryOf(request), columns, usualView(run, columns));
-  const wrong = await filterMistake(run.id, view, commands);
-  const all = wrong ? [...mistakes, wrong] : mistakes;
-  return { run, columns, view, where: wrong ? '' : wholeFilter(view), mistakes: all };
+  const parts = mistakes.some(({ field }) => field === 'only' || field === 'ranges');
+  const wrong = parts ? undefined : await filterMistake(run.id, view, commands);
+  const where = parts || wrong ? '' : wholeFilter(view);
+  return { run, columns, view, where, mistakes: wrong ? [...mistakes, wrong] : mistakes };
 }
 
 /** The text first, so that the place of a mistake is a place in the text; then all conditions together. */

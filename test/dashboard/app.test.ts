@@ -92,6 +92,16 @@ describe('a run page', () => {
     expect(textOf(page)).toContain('1 000 of 1 000 points');
   });
 
+  it('keeps what was typed, and applies no part of a filter that is mistaken in another', async () => {
+    const page = await get('/runs/1?only=surviving&quantity=Mt&from=17o&to=&xFrom=3&xTo=');
+    expect(page.status).toBe(400);
+    expect(page.text).toContain('value="17o"');
+    expect(page.text).toContain('value="3"');
+    expect(textOf(page)).toContain('1 000 of 1 000 points');
+    expect(textOf(page)).toContain('is not applied');
+    expect((await get('/runs/1/points.csv?only=surviving&quantity=Mt&from=17o&to=')).status).toBe(400);
+  });
+
   it('never answers half a filter: two halves that only make sense together are a mistake', async () => {
     const page = await get(`/runs/1?only=surviving&where=${encodeURIComponent('Mt < 170) or (Mt > 0')}`);
     expect(page.status).toBe(400);

@@ -21,11 +21,12 @@ describe('symbols', () => {
   });
 
   it('raises the powers of units and prints nothing for pure numbers', () => {
-    expect([unitHtml('GeV').text, unitHtml('GeV^2').text, unitHtml('1').text]).toEqual([
-      'GeV',
-      'GeV<sup>2</sup>',
-      '',
-    ]);
+    expect([
+      unitHtml('GeV').text,
+      unitHtml('GeV^2').text,
+      unitHtml('GeV^-2').text,
+      unitHtml('1').text,
+    ]).toEqual(['GeV', 'GeV<sup>2</sup>', 'GeV<sup>−2</sup>', '']);
   });
 
   it('has a form in plain text', () => {

@@ -72,7 +72,7 @@ describe('the view in the address', () => {
     expect(mistakes).toHaveLength(1);
     expect(mistakes[0]).toMatchObject({ field, found });
     expect(mistakes[0].expected).not.toBe('');
-    expect(view).toMatchObject({ x: 'Mh', y: 'Mt', page: 1, only: [], ranges: [] });
+    expect(view).toMatchObject({ x: 'Mh', y: 'Mt', page: 1, only: [] });
   });
 
   it('repeats no long text of an odd address', () => {
