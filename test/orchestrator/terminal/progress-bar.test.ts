@@ -63,7 +63,6 @@ describe('progress elsewhere', () => {
     wait(5000);
     shown.show(at(20_000, { retried: 1 }));
     expect(written.at(-1)).toMatch(/^100 % {2}20,000 of 20,000 points.*1 chunks tried again\n$/);
-    // eslint-disable-next-line no-control-regex -- no escape sequence may be there
     expect(written.join('')).not.toMatch(/[\r\u001b]/);
   });
 });
