@@ -1,3 +1,4 @@
+import { randomUUID } from 'node:crypto';
 import type { PointsBlock, ResultBlock, Task } from '../../workers/contract.js';
 import type { ChunkReport, OpenDispatcher } from '../dispatch/dispatcher.js';
 import { Broken } from '../mistakes.js';
@@ -15,7 +16,8 @@ export async function* recompute<T>(
   portions: Iterable<Portion<T>>,
   open: OpenDispatcher,
 ): AsyncGenerator<Portion<T> & { readonly result: ResultBlock }> {
-  const dispatcher = await open(task, 'verify');
+  // Two at once on one queue server must not read each other's answers.
+  const dispatcher = await open(task, `verify-${randomUUID()}`);
   const flying = new Map<string, Portion<T>>();
   const reports = mailbox<ChunkReport>();
   dispatcher.onReport(reports.put);

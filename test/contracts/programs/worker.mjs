@@ -28,7 +28,7 @@ parentPort.on('message', ({ id, points }) => {
     return parentPort.postMessage({ id, error: 'refused by the test program' });
   if (order === ORDERS.wrongShape) return answer(id, { ...evaluate(points), margins: new Float64Array(1) });
   if (order === ORDERS.killProcess) process.kill(process.pid, 'SIGKILL');
-  if (order === ORDERS.answerSlowly) wait(400);
+  if (order === ORDERS.answerSlowly) wait(1000);
   reply();
   if (order === ORDERS.answerTwice) reply();
 });
