@@ -14,6 +14,7 @@ import { join } from 'node:path';
 import { fileURLToPath } from 'node:url';
 import Database from 'better-sqlite3';
 import { afterAll, afterEach, beforeAll, beforeEach, describe, expect, test } from 'vitest';
+import { openForReading } from '../../orchestrator/store/open.js';
 import { noRedis, redisServer } from '../contracts/redis-server.js';
 import { endPrograms, program, type Program } from './processes.js';
 
@@ -70,23 +71,28 @@ async function facts(run: Program): Promise<Facts> {
   if (status !== 0) throw new Error(`the launch ended with ${status}: ${run.err()}`);
   return JSON.parse(run.out()) as Facts;
 }
-/** Resolves once the progress speaks of points that are committed. */
-const underWay = (run: Program) => run.says(/ [1-9][\d,]* of 6,000 points/);
+/** Starts a launch and waits until some points are committed; one worker, so that there is time to disturb it. */
+async function launchUnderWay(): Promise<Program> {
+  const run = launch(store, '--workers', '1');
+  await run.says(/run 1, new/);
+  const reading = openForReading(store);
+  while (reading.run(1)?.counts.points === 0) await new Promise((resolve) => setTimeout(resolve, 10));
+  reading.close();
+  return run;
+}
 const sameAsUndisturbed = () => ({ state: 'complete', points: 6000, digest: undisturbed.digest });
 const hashOf = (file: string) => createHash('sha256').update(readFileSync(file)).digest('hex');
 
 describe('a launch', () => {
   test('stopped by Ctrl-C ends with 130 and is resumed', async () => {
-    const first = launch(store);
-    await underWay(first);
+    const first = await launchUnderWay();
     first.signal('SIGINT');
     expect(await first.exit).toBe(130);
     expect(await facts(launch(store))).toMatchObject(sameAsUndisturbed());
   });
 
   test('killed with kill -9 is resumed', async () => {
-    const first = launch(store);
-    await underWay(first);
+    const first = await launchUnderWay();
     first.signal('SIGKILL');
     expect(await first.exit).toBe('SIGKILL');
     expect(await facts(launch(store))).toMatchObject(sameAsUndisturbed());
@@ -94,12 +100,9 @@ describe('a launch', () => {
 
   test('on a store that another works on is refused with 3', async () => {
     const first = launch(store);
-    await underWay(first);
-    // Held, so that it is surely at work while the other asks.
-    first.signal('SIGSTOP');
+    await first.says(/run 1, new/);
     const second = launch(store);
     expect(await second.exit).toBe(3);
-    first.signal('SIGCONT');
     expect(second.err()).toContain(`process ${first.pid} `);
     expect(second.err()).not.toMatch(/^\s+at /m);
     expect(await facts(first)).toMatchObject(sameAsUndisturbed());

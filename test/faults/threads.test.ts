@@ -57,14 +57,12 @@ describe('a coordinator that is stopped', () => {
   });
 
   test('while another is at work is refused, and the other is not disturbed', async () => {
-    const plan = linePlan(POINTS, SLOW);
-    const first = startWork(store.path, plan, { threads: 2 });
+    // Held up for some seconds by a worker that hangs once.
+    const plan = linePlan(POINTS, { hangAt: 7999, once: join(store.folder, 'happened') });
+    const first = startWork(store.path, plan, { threads: 2, chunkSeconds: 5 });
     await committed(first, 0);
-    // Held, so that it is surely at work while the other asks.
-    first.signal('SIGSTOP');
     const second = startWork(store.path, plan, { threads: 2 });
     expect(await second.exit).toBe(3);
-    first.signal('SIGCONT');
     expect(second.err()).toContain(`process ${first.pid} `);
     expect(second.err()).toContain('Nothing was changed');
     expect(await resultOf(first)).toMatchObject({ state: 'complete', digest: undisturbed });
