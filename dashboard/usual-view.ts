@@ -1,17 +1,17 @@
 import type { ColumnRecord, RunRecord } from '../orchestrator/store/records.js';
 import type { CheckFacts } from '../orchestrator/commands/commands.js';
 import { isClass } from './columns.js';
-import type { RunView } from './view.js';
+import { partsOf } from './parts.js';
+import type { UsualView } from './view.js';
 
 type Plan = CheckFacts['plan'];
 
 /** What a run page shows before anything is chosen: the two inputs that are varied most widely against each other,
- *  coloured by the class with the most to tell apart, or by verdict. */
-export function usualView(
-  run: RunRecord,
-  columns: readonly ColumnRecord[],
-): Pick<RunView, 'x' | 'y' | 'colour' | 'columns'> {
-  const varied = variedInputs(run).filter((name) => columns.some((column) => column.name === name));
+ *  coloured by the class with the most to tell apart, or by verdict. Of a plan in parts, those of the largest. */
+export function usualView(run: RunRecord, columns: readonly ColumnRecord[]): UsualView {
+  const varied = variedInputs(run, partsOf(run)[0].strata[0]).filter((name) =>
+    columns.some((column) => column.name === name),
+  );
   const spare = columns
     .filter((column) => column.kind === 'quantity' && !isClass(column))
     .map((one) => one.name);

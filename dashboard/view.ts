@@ -1,11 +1,11 @@
 import type { ColumnRecord } from '../orchestrator/store/records.js';
-import { isClass } from './columns.js';
+import type { ConditionGroup } from './conditions.js';
 
 /** Everything a run page shows, as its address says it: the filter, the figure, the table. */
 export interface RunView {
   /** Text in the language of expressions. */
   readonly where: string;
-  /** Ready-made conditions, each an expression offered by `conditionsOf`. */
+  /** Ready-made conditions, each an expression that the list of conditions offers. */
   readonly only: readonly string[];
   readonly ranges: readonly Range[];
   readonly x: string;
@@ -22,6 +22,9 @@ export interface RunView {
   readonly columns: readonly string[];
   readonly page: number;
 }
+
+/** What is shown where the address says nothing. */
+export type UsualView = Pick<RunView, 'x' | 'y' | 'colour' | 'columns'>;
 
 export interface Range {
   readonly quantity: string;
@@ -49,7 +52,8 @@ export interface FieldMistake {
 export function readView(
   query: URLSearchParams,
   columns: readonly ColumnRecord[],
-  usual: Pick<RunView, 'x' | 'y' | 'colour' | 'columns'>,
+  usual: UsualView,
+  offered: readonly ConditionGroup[],
 ): { readonly view: RunView; readonly mistakes: readonly FieldMistake[] } {
   const mistakes: FieldMistake[] = [];
   const names = new Map(columns.map((column) => [column.name, column]));
@@ -75,7 +79,7 @@ export function readView(
 
   const view: RunView = {
     where: (query.get('where') ?? '').trim(),
-    only: readOnly(query, columns, report),
+    only: readOnly(query, offered, report),
     ranges: readRanges(query, names, report),
     x: column('x', usual.x),
     y: column('y', usual.y),
@@ -136,40 +140,14 @@ export function viewQuery(view: RunView, change: Partial<RunView> = {}): string 
   return `?${query.toString()}`;
 }
 
-export interface Condition {
-  readonly expression: string;
-  readonly title: string;
-}
-
-/** Conditions that a newcomer can choose from a list, group by group. */
-export function conditionsOf(
-  columns: readonly ColumnRecord[],
-): readonly { readonly title: string; readonly conditions: readonly Condition[] }[] {
-  return columns.filter(isClass).flatMap((column) => {
-    const labels = column.labels ?? [];
-    const conditions = labels.map((label, index) => conditionOf(column, label, index));
-    return column.name === 'failure' ? [] : [{ title: column.constraint ?? column.meaning, conditions }];
-  });
-}
-
-function conditionOf(column: ColumnRecord, label: string, index: number): Condition {
-  if (column.name === 'verdict') return { expression: label, title: label };
-  if (column.kind !== 'outcome') return { expression: `${column.name} == ${index}`, title: label };
-  const title = `${column.constraint ?? column.name}: ${label.replace('-', ' ')}`;
-  const simple = label === 'met' || label === 'violated';
-  return { expression: simple ? `${label}(${column.constraint})` : `${column.name} == ${index}`, title };
-}
-
 function rangeExpression({ quantity, from, to }: Range): string {
   return `${from === '' ? '' : `${from} <= `}${quantity}${to === '' ? '' : ` <= ${to}`}`;
 }
 
 type Report = (mistake: FieldMistake) => void;
 
-function readOnly(query: URLSearchParams, columns: readonly ColumnRecord[], report: Report): string[] {
-  const offered = new Set(
-    conditionsOf(columns).flatMap((group) => group.conditions.map((one) => one.expression)),
-  );
+function readOnly(query: URLSearchParams, groups: readonly ConditionGroup[], report: Report): string[] {
+  const offered = new Set(groups.flatMap((group) => group.conditions.map((one) => one.expression)));
   return query
     .getAll('only')
     .filter((only) => only !== '')

@@ -1,6 +1,7 @@
 import type { ColumnRecord, RunRecord } from '../../orchestrator/store/records.js';
 import type { CutFlow } from '../../orchestrator/store/reading.js';
 import type { Catalogue } from '../commands.js';
+import type { ConditionGroup } from '../conditions.js';
 import { html, type Safe } from '../html.js';
 import { mayMove, type Moment } from '../live.js';
 import { digestShort, momentText } from '../numbers.js';
@@ -17,6 +18,7 @@ import { viewForm } from './view-form.js';
 export interface RunPageParts extends ResultParts, ProvenanceParts {
   readonly moment: Moment;
   readonly columns: readonly ColumnRecord[];
+  readonly conditions: readonly ConditionGroup[];
   readonly mistakes: readonly FieldMistake[];
   readonly cutFlow: CutFlow;
   readonly catalogue: Catalogue | undefined;
@@ -44,7 +46,7 @@ export function runPage(parts: RunPageParts): string {
         <a href="#provenance">Provenance</a>
       </nav>
       <div class="explore">
-        ${viewForm({ run: run.id, view: parts.view, columns: parts.columns, mistakes: parts.mistakes })}
+        ${viewForm({ run: run.id, view: parts.view, columns: parts.columns, conditions: parts.conditions, mistakes: parts.mistakes })}
         ${resultsSection(parts)}
       </div>
       ${cutFlowSection(parts.cutFlow, parts.catalogue)} ${provenanceSection(parts)}

@@ -1,13 +1,15 @@
 import type { ColumnRecord } from '../../orchestrator/store/records.js';
 import { columnTitle, grouped } from '../columns.js';
 import { html, type Part, type Safe } from '../html.js';
-import { conditionsOf, DRAWINGS, SCALES, type FieldMistake, type RunView } from '../view.js';
+import type { ConditionGroup } from '../conditions.js';
+import { DRAWINGS, SCALES, type FieldMistake, type RunView } from '../view.js';
 import { filterHelp } from './filter-help.js';
 
 export interface FormParts {
   readonly run: number;
   readonly view: RunView;
   readonly columns: readonly ColumnRecord[];
+  readonly conditions: readonly ConditionGroup[];
   readonly mistakes: readonly FieldMistake[];
 }
 
@@ -35,8 +37,7 @@ export function viewForm(parts: FormParts): Safe {
   </form>`;
 }
 
-function onlyFields({ view, columns, mistakes }: FormParts): Safe {
-  const groups = conditionsOf(columns);
+function onlyFields({ view, conditions, mistakes }: FormParts): Safe {
   const rows = [...view.only, ''];
   return html`<div class="field">
     ${rows.map(
@@ -44,7 +45,7 @@ function onlyFields({ view, columns, mistakes }: FormParts): Safe {
         html`<label for="only-${index}">${index === 0 ? 'Only points that are' : 'and that are'}</label>
           <select id="only-${index}" name="only" ${invalid(mistakes, 'only')}>
             <option value="">${index === 0 ? 'anything' : 'anything more'}</option>
-            ${groups.map(
+            ${conditions.map(
               (group) =>
                 html`<optgroup label="${group.title}">
                   ${group.conditions.map((condition) => option(condition.expression, condition.title, chosen))}

@@ -7,7 +7,8 @@ import { ROWS } from '../pages/results.js';
 import { runPage } from '../pages/run-page.js';
 import { runsPage } from '../pages/runs-page.js';
 import { Refusal } from '../refusal.js';
-import { numberIn, runOf } from './request.js';
+import { inPart, partsOf } from '../parts.js';
+import { numberIn, queryOf, runOf } from './request.js';
 import { askedOf, figureFor } from './run-view.js';
 
 export function pageRoutes(deps: DashboardDeps): Router {
@@ -16,6 +17,9 @@ export function pageRoutes(deps: DashboardDeps): Router {
     response.type('html').send(runsPage(await deps.questions.runs()));
   });
   router.get('/runs/:run', async (request, response) => {
+    const bare = queryOf(request).size === 0;
+    const part = bare ? await firstPart(request, deps) : undefined;
+    if (part !== undefined) return response.redirect(part);
     const { status, text } = await runPageOf(request, deps);
     response.status(status).type('html').send(text);
   });
@@ -25,10 +29,19 @@ export function pageRoutes(deps: DashboardDeps): Router {
   return router;
 }
 
+/** Where a run page without a view leads: a plan in several parts shows its largest, for points of another slice of
+ *  parameter space would blur the regions of the figure. */
+async function firstPart(request: Request, { questions }: DashboardDeps): Promise<string | undefined> {
+  const run = await runOf(request, questions);
+  const [largest, ...others] = partsOf(run);
+  if (others.length === 0) return undefined;
+  return `/runs/${run.id}?${new URLSearchParams({ only: inPart(largest) }).toString()}`;
+}
+
 async function runPageOf(request: Request, deps: DashboardDeps): Promise<{ status: number; text: string }> {
   const { questions, commands } = deps;
   const asked = await askedOf(request, deps);
-  const { run, columns, view, where, mistakes } = asked;
+  const { run, columns, conditions, view, where, mistakes } = asked;
   const counts = await questions.counts({ run: run.id, where });
   const last = Math.max(1, Math.ceil(counts.points / ROWS));
   const offset = (Math.min(view.page, last) - 1) * ROWS;
@@ -42,7 +55,21 @@ async function runPageOf(request: Request, deps: DashboardDeps): Promise<{ statu
   ]);
   const moment = { run, chunks, pointsPerSecond: null, secondsLeft: null, stillSeconds: 0 };
   const text = runPage({
-    ...{ run, columns, view, where, mistakes, counts, figure, page, cutFlow, chunks, catalogue, moment },
+    ...{
+      run,
+      columns,
+      conditions,
+      view,
+      where,
+      mistakes,
+      counts,
+      figure,
+      page,
+      cutFlow,
+      chunks,
+      catalogue,
+      moment,
+    },
     commands: reproduce,
   });
   return { status: mistakes.length > 0 ? 400 : 200, text };

@@ -45,7 +45,7 @@ describe.skipIf(noChromium)('the dashboard in Chromium', () => {
       const page = await open('/');
       const complaints = complaintsOf(page);
       await page.getByRole('link', { name: /A plane/ }).click();
-      expect(await countShown(page)).toBe(1000);
+      expect(await countShown(page)).toBe(900);
       await page.getByLabel('Only points that are').selectOption({ label: 'excluded' });
       await page.getByRole('textbox', { name: 'and where' }).fill('Mt > 172');
       await page.getByLabel('Across', { exact: true }).selectOption('Mt');
@@ -182,7 +182,7 @@ describe.skipIf(noChromium)('the dashboard in Chromium', () => {
   describe('watching a run', () => {
     it('sees it progress to its end without a reload, through a lost connection, and finds the figure filled', async () => {
       const folder = newFolder();
-      writeFileSync(join(folder, 'plane.yaml'), planeScan(12_000));
+      writeFileSync(join(folder, 'plane.yaml'), planeScan(60_000));
       const running = start(['launch', 'plane.yaml', '--workers', '1'], { cwd: folder });
       await running.saying(/points\/s/);
       const store = join(folder, 'trigpoint.sqlite');
@@ -209,8 +209,8 @@ describe.skipIf(noChromium)('the dashboard in Chromium', () => {
       await expect.poll(points, { timeout: 20_000 }).toBeGreaterThan(before);
 
       await page.getByText('The run is complete.').waitFor({ timeout: 60_000 });
-      expect(await points()).toBe(12_000);
-      await expect.poll(() => countShown(page), { timeout: 10_000 }).toBe(12_000);
+      expect(await points()).toBe(60_000);
+      await expect.poll(() => countShown(page), { timeout: 10_000 }).toBe(60_000);
       const digest = /sha256:[0-9a-f]{64}/;
       await expect.poll(() => page.locator('#provenance').textContent(), { timeout: 10_000 }).toMatch(digest);
       await expect

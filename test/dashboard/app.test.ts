@@ -45,13 +45,19 @@ describe('the list of runs', () => {
 
 describe('a run page', () => {
   it('agrees with what the command line says', async () => {
-    const text = textOf(await get('/runs/1'));
+    const text = textOf(await get('/runs/1?where='));
     expect(text).toContain('1 000 of 1 000 points');
     expect(text).toContain(
       `${launched.surviving as number} surviving, ${launched.excluded as number} excluded`,
     );
     expect(text).toContain(launched.digest);
     expect(text).toContain('npx trigpoint rerun 1');
+  });
+
+  it('opens on the largest part of its plan, and says so in the address', async () => {
+    const bare = await get('/runs/1');
+    expect([bare.status, bare.headers.location]).toEqual([302, '/runs/1?only=stratum+%3D%3D+0']);
+    expect(textOf(await get('/runs/1?only=stratum+%3D%3D+0'))).toContain('900 of 1 000 points');
   });
 
   it.each([
@@ -185,7 +191,7 @@ describe('what is refused', () => {
     ['a POST', { method: 'POST' }, 405],
     ['a DELETE', { method: 'DELETE' }, 405],
   ])('%s', async (_name, options, status) => {
-    const page = await get('/runs/1', options);
+    const page = await get('/runs/1?where=', options);
     expect(page.status).toBe(status);
     expect(page.text).not.toContain('Provenance');
     if (status === 405) expect(page.headers.allow).toBe('GET, HEAD');
@@ -228,7 +234,7 @@ describe('what is refused', () => {
 
 describe('every page', () => {
   it('carries a strict policy, and none that would break plain http on this machine', async () => {
-    for (const path of ['/', '/runs/1', '/runs/1/points/0/0', '/nowhere', '/runs/1/figure.svg']) {
+    for (const path of ['/', '/runs/1?where=', '/runs/1/points/0/0', '/nowhere', '/runs/1/figure.svg']) {
       const { headers } = await get(path);
       const policy = String(headers['content-security-policy']);
       expect(policy).toContain("default-src 'none'");
@@ -241,7 +247,7 @@ describe('every page', () => {
   });
 
   it('has nothing inline that the policy forbids, and loads nothing from elsewhere', async () => {
-    for (const path of ['/', '/runs/1', '/runs/1/points/0/0']) {
+    for (const path of ['/', '/runs/1?where=', '/runs/1/points/0/0']) {
       const { text } = await get(path);
       expect(text).not.toMatch(/<style|\sstyle=|\son[a-z]+=|<script(?! src="\/assets\/)/);
       expect(text).not.toMatch(/(src|href)="(https?:)?\/\/(?!arxiv\.org|doi\.org)/);
@@ -251,7 +257,7 @@ describe('every page', () => {
   it('says in words that the store cannot be read, with nothing of the program’s insides', async () => {
     const other = await dashboardOn(store);
     await other.questions.close();
-    const page = await ask(other.address, '/runs/1');
+    const page = await ask(other.address, '/runs/1?where=');
     await other.close();
     expect(page.status).toBe(500);
     expect(textOf(page)).toContain('Nothing was changed');

@@ -1,7 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import type { ColumnRecord } from '../../orchestrator/store/records.js';
 import { compile } from '../../workers/expressions/compile.js';
-import { conditionsOf, readView, viewQuery, wholeFilter } from '../../dashboard/view.js';
+import { conditionsOf } from '../../dashboard/conditions.js';
+import { readView, viewQuery, wholeFilter } from '../../dashboard/view.js';
 
 const base = { unit: 'GeV', symbol: 'x', meaning: 'something' } as const;
 const columns: ColumnRecord[] = [
@@ -19,7 +20,13 @@ const columns: ColumnRecord[] = [
   { ...base, name: 'verdict', kind: 'point', labels: ['surviving', 'excluded', 'failed', 'unfinished'] },
 ];
 const usual = { x: 'Mh', y: 'Mt', colour: 'vacuumClass', columns: ['verdict', 'Mt'] };
-const read = (query: string) => readView(new URLSearchParams(query), columns, usual);
+const strata = [
+  { name: 'plane', points: 10, vary: [{ input: 'Mh' }, { input: 'Mt' }] },
+  { name: 'line', points: 20, vary: [{ input: 'Mt' }] },
+  { name: 'plane+1', points: 15, vary: [{ input: 'Mh' }, { input: 'Mt' }] },
+];
+const offered = conditionsOf({ plan: JSON.stringify({ strata }) }, columns);
+const read = (query: string) => readView(new URLSearchParams(query), columns, usual, offered);
 
 describe('the view in the address', () => {
   it('is the usual one where the address says nothing', () => {
@@ -48,10 +55,19 @@ describe('the view in the address', () => {
     expect(() => compile(wholeFilter(view))).not.toThrow();
   });
 
+  it('offers the parts of a plan, strata that vary the same inputs together, the largest first', () => {
+    expect(offered[0].conditions).toEqual([
+      { expression: 'stratum == 0 or stratum == 2', title: 'of plane, plane+1' },
+      { expression: 'stratum == 1', title: 'of line' },
+    ]);
+    const alone = conditionsOf({ plan: JSON.stringify({ strata: strata.slice(0, 1) }) }, columns);
+    expect(alone).toEqual(offered.slice(1));
+  });
+
   it('offers conditions that the filter language reads', () => {
-    const offered = conditionsOf(columns).flatMap((group) => group.conditions);
-    expect(offered.map((one) => one.expression)).toContain('met(vacuum-stability)');
-    for (const { expression } of offered) expect(() => compile(expression)).not.toThrow();
+    const conditions = offered.flatMap((group) => group.conditions);
+    expect(conditions.map((one) => one.expression)).toContain('met(vacuum-stability)');
+    for (const { expression } of conditions) expect(() => compile(expression)).not.toThrow();
   });
 
   it.each([
