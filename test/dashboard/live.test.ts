@@ -47,7 +47,7 @@ const pointsIn = (data: string) =>
   Number(/<dt>Points<\/dt>\s*<dd>([\d\u202f]+)/.exec(data)?.[1].replace(/\D/g, ''));
 
 beforeAll(() => {
-  writeFileSync(join(folder, 'plane.yaml'), planeScan(6000));
+  writeFileSync(join(folder, 'plane.yaml'), planeScan(30_000));
 });
 afterAll(() => questions.close());
 
@@ -62,8 +62,8 @@ describe('live updates', () => {
     const progress = told.filter((event) => event.name === 'progress').map((event) => pointsIn(event.data));
     expect(progress.length).toBeGreaterThan(2);
     expect([...progress].sort((a, b) => a - b)).toEqual(progress);
-    expect(progress.at(-1)).toBe(6000);
-    expect(told.at(-1)).toEqual({ name: 'done', data: '6000' });
+    expect(progress.at(-1)).toBe(30_000);
+    expect(told.at(-1)).toEqual({ name: 'done', data: '30000' });
     expect(told.filter((event) => event.name === 'state').map((event) => event.data)).toEqual([
       'The run is being computed.',
       'The run is complete.',
