@@ -1,8 +1,7 @@
 import express, { type Express, type NextFunction, type Request, type Response } from 'express';
 import helmet from 'helmet';
-import type { AsyncQuestions } from '../orchestrator/store/reading.js';
 import { assetRoutes } from './assets.js';
-import type { DashboardCommands } from './commands.js';
+import type { DashboardDeps } from './deps.js';
 import { guard } from './guard.js';
 import { createLiveRuns, type LiveRuns } from './live.js';
 import { troublePage } from './pages/trouble-page.js';
@@ -10,17 +9,6 @@ import { Refusal } from './refusal.js';
 import { downloadRoutes } from './routes/downloads.js';
 import { liveRoutes } from './routes/live.js';
 import { pageRoutes } from './routes/pages.js';
-
-export interface DashboardDeps {
-  readonly questions: AsyncQuestions;
-  readonly commands: DashboardCommands;
-  /** Names, besides those of this machine, under which the dashboard may be asked for. */
-  readonly hosts?: readonly string[];
-  /** Told of every unexpected error, which the reader of a page sees only in words. */
-  readonly onError?: (error: unknown) => void;
-  /** How often a watched run is looked at, in milliseconds. */
-  readonly every?: number;
-}
 
 /** The dashboard as an Express application. `live` is to be closed with the server. */
 export function createApp(deps: DashboardDeps): Express & { readonly live: LiveRuns } {

@@ -1,5 +1,6 @@
 import { createServer } from 'node:http';
-import { createApp, type DashboardDeps } from './app.js';
+import { createApp } from './app.js';
+import type { DashboardDeps } from './deps.js';
 
 export interface Served {
   /** e.g. "http://127.0.0.1:8137" */

@@ -1,5 +1,5 @@
 import express, { type Request, type Response, type Router } from 'express';
-import type { DashboardDeps } from '../app.js';
+import type { DashboardDeps } from '../deps.js';
 import { captionLines } from '../pages/results.js';
 import { NARROW, WIDE } from '../plots/drawing.js';
 import { Refusal } from '../refusal.js';

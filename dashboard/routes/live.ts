@@ -1,5 +1,5 @@
 import express, { type Request, type Response, type Router } from 'express';
-import type { DashboardDeps } from '../app.js';
+import type { DashboardDeps } from '../deps.js';
 import { mayMove, type LiveRuns, type Moment } from '../live.js';
 import { progressHtml, stateSentence } from '../pages/progress.js';
 import { Refusal } from '../refusal.js';

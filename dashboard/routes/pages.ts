@@ -1,7 +1,7 @@
 import express, { type Request, type Router } from 'express';
 import type { CheckFacts } from '../../orchestrator/commands/commands.js';
 import type { RunRecord } from '../../orchestrator/store/records.js';
-import type { DashboardDeps } from '../app.js';
+import type { DashboardDeps } from '../deps.js';
 import { pointPage } from '../pages/point-page.js';
 import { ROWS } from '../pages/results.js';
 import { runPage } from '../pages/run-page.js';

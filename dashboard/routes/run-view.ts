@@ -1,7 +1,7 @@
 import type { Request } from 'express';
 import type { FilteredCounts } from '../../orchestrator/store/reading.js';
 import type { ColumnRecord, RunRecord } from '../../orchestrator/store/records.js';
-import type { DashboardDeps } from '../app.js';
+import type { DashboardDeps } from '../deps.js';
 import { figureOf, type Figure } from '../figure.js';
 import { conditionsOf, type ConditionGroup } from '../conditions.js';
 import { usualView } from '../usual-view.js';

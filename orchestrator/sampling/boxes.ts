@@ -1,7 +1,7 @@
 import { log } from '../../workers/numerics/log.js';
 import { UserMistake } from '../mistakes.js';
 import type { Axis } from '../scan/plan.js';
-import type { Family, Wider, Widening } from './widen.js';
+import type { Family, Wider, Widening } from './widening.js';
 
 export interface Piece {
   readonly vary: readonly Axis[];

@@ -2,7 +2,8 @@ import { UserMistake } from '../mistakes.js';
 import type { Plan, Stratum } from '../scan/plan.js';
 import { MOST_POINTS, MOST_STRATA } from '../scan/shape.js';
 import { growPoints } from './grow.js';
-import { widen, type Wider } from './widen.js';
+import { widen } from './widen.js';
+import type { Wider } from './widening.js';
 
 export interface Change {
   /** More points: a number is the new total of the whole plan, a mapping gives new counts by name of stratum. */

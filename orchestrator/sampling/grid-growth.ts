@@ -4,7 +4,7 @@ import type { Axis } from '../scan/plan.js';
 import { MOST_VALUES } from '../scan/shape.js';
 import { longer, union, type Piece } from './boxes.js';
 import { gridSize, gridValues } from './grid.js';
-import type { Family, Wider, Widening } from './widen.js';
+import type { Family, Wider, Widening } from './widening.js';
 
 /** Two grids share a value if it differs by less than this part of a step. */
 const SAME = 1e-6;

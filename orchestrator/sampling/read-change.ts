@@ -1,7 +1,7 @@
 import { UserMistake } from '../mistakes.js';
 import { quote } from '../scan/phrases.js';
 import type { Change } from './extend.js';
-import type { Wider } from './widen.js';
+import type { Wider } from './widening.js';
 
 const NUMBER = /^[-+]?(\d+\.?\d*|\.\d+)(e[-+]?\d+)?$/i;
 

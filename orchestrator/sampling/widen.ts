@@ -7,18 +7,7 @@ import { MOST_VALUES } from '../scan/shape.js';
 import { newBoxes } from './boxes.js';
 import { grownName, rootOf } from './family.js';
 import { newGrids } from './grid-growth.js';
-
-/** What an axis is to become: a range, with steps for a grid, or a list. Ranges and steps left out stay. */
-export interface Wider {
-  readonly range?: readonly [number, number];
-  readonly steps?: number;
-  readonly list?: readonly number[];
-}
-
-export type Widening = Readonly<Record<string, Wider>>;
-
-/** Strata that belong together: one box, covered piece by piece. */
-export type Family = readonly [Stratum, ...Stratum[]];
+import type { Family, Wider, Widening } from './widening.js';
 
 /** Appends strata that cover what is new; see extendPlan for the rules.
  *  @param notes receives sentences for the user */

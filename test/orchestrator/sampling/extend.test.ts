@@ -3,7 +3,7 @@ import { describe, expect, test } from 'vitest';
 import { extendPlan } from '../../../orchestrator/sampling/extend.js';
 import { gridValues } from '../../../orchestrator/sampling/grid.js';
 import { samplerOf } from '../../../orchestrator/sampling/sampler.js';
-import type { Wider } from '../../../orchestrator/sampling/widen.js';
+import type { Wider } from '../../../orchestrator/sampling/widening.js';
 import type { Axis, Plan, Stratum } from '../../../orchestrator/scan/plan.js';
 import { planOf } from './plan-of.js';
 
