@@ -5,8 +5,8 @@ import { G2, G3, GY, LAMBDA, LOOP, YT } from './state.js';
  * Source: the appendix of Buttazzo et al., arXiv:1307.3536, which collects Mihaila, Salomon and Steinhauser
  * (arXiv:1201.5868), Chetyrkin and Zoller (arXiv:1205.2892, 1303.2890) and Bednyakov, Pikelner and Velizhanin
  * (arXiv:1210.6873, 1212.6829, 1303.4364). Written from memory and confirmed by the published couplings at the
- * Planck scale (test/published/); one coefficient (lambda^2 yt^4: 1719.52) is in doubt at a level that moves
- * lambda there by 7e-7. yb, ytau, m2 and the field's anomalous dimension have no three-loop term here.
+ * Planck scale (test/published/) and, for lambda, yt and the leading terms in g3, by their closed forms
+ * (sm-three-loops.test.ts). yb, ytau, m2 and the field's anomalous dimension have no three-loop term here.
  *
  * The source gives derivatives of a = (5/3) gY^2, b = g2^2, c = g3^2, y = yt^2 and l = lambda with respect to
  * ln mu^2. For a squared coupling that is g * dg/d(ln mu); for l it is half of dl/d(ln mu). */
@@ -87,7 +87,7 @@ function addThreeLoopsOfQuartic(state: Float64Array, out: Float64Array): void {
     2 *
     CUBE *
     (l * l * l * (6011.35 * l + 873 * y - 387.452 * b - 77.49 * a) +
-      l * l * y * (1719.52 * y + 160.77 * c - 359.539 * b - 63.869 * a) +
+      l * l * y * (1768.26 * y + 160.77 * c - 359.539 * b - 63.869 * a) +
       l * l * (790.28 * bb + 185.532 * aa + 316.64 * b * a) +
       l * y * y * (-223.382 * y - 662.866 * c - 5.47 * b - 21.384 * a) +
       l *
