@@ -20,7 +20,7 @@ export function dashboardCommands(questions: AsyncQuestions, store = USUAL_STORE
     },
     async pointFacts(id, stratum, index) {
       const run = await questions.run(id);
-      return run && storedPoint(questions, run, stratum, index);
+      return run && storedPoint(questions, run, stratum, index, store);
     },
     async checkFilter(id, where) {
       const columns = await questions.columns(id);

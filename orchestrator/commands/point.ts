@@ -1,6 +1,8 @@
 import type { ConstraintUse, Model, Options, RunningSettings, Task } from '../../workers/contract.js';
 import { constraints } from '../../workers/constraints/catalogue.js';
 import { UserMistake } from '../mistakes.js';
+import { shortNumber } from '../scan/phrases.js';
+import type { Plan } from '../scan/plan.js';
 import { readScan } from '../scan/read-scan.js';
 import type { PointFacts } from './commands.js';
 import { evaluatePoint } from './evaluate-point.js';
@@ -9,7 +11,7 @@ import { checkNames } from './named.js';
 
 export interface PointRequest {
   readonly model: string;
-  /** Values of inputs; the others have the defaults of the model, or those that the scan file fixes. */
+  /** Values of inputs; the others have the defaults of the model, or those that the plan fixes. */
   readonly set: Readonly<Record<string, number>>;
   /** Options of the model, as typed. */
   readonly options: Readonly<Record<string, string>>;
@@ -17,13 +19,16 @@ export interface PointRequest {
   readonly tolerance?: number;
   /** A scan file whose definitions, running, requirements and fixed inputs the point is evaluated with. */
   readonly scan?: { readonly bytes: Uint8Array; readonly file: string };
+  /** Or the plan of a run, with the same meaning. */
+  readonly plan?: Plan;
 }
 
-/** Evaluates one point. Without a scan file every constraint of the catalogue decides, with its default options.
+/** Evaluates one point. Without a scan file or plan every constraint of the catalogue decides, with its default options.
  *  @throws UserMistake for a name or value that does not fit, FileMistakes for the scan file */
 export function point(request: PointRequest): PointFacts {
   const model = modelNamed(request.model);
-  const frame = request.scan ? frameOfScan(request.scan, model) : frameOfCatalogue(model);
+  const plan = request.scan ? readScan(request.scan.bytes, request.scan.file).plan : request.plan;
+  const frame = plan ? frameOfPlan(plan, model, request.scan ? '--scan' : '--run') : frameOfCatalogue(model);
   const defined = frame.define.map((definition) => definition.name);
   const free = model.inputs.filter((input) => !defined.includes(input.name));
   checkNames(
@@ -67,14 +72,9 @@ function frameOfCatalogue(model: Model): Frame {
   return { options, running: USUAL_RUNNING, fix: {}, define: [], constraints: uses, deciding: uses.length };
 }
 
-function frameOfScan(scan: { bytes: Uint8Array; file: string }, model: Model): Frame {
-  const { plan } = readScan(scan.bytes, scan.file);
+function frameOfPlan(plan: Plan, model: Model, where: string): Frame {
   if (plan.model.name !== model.name)
-    throw new UserMistake({
-      where: '--scan',
-      expected: `a scan file of ${model.name}`,
-      found: `one of ${plan.model.name}`,
-    });
+    throw new UserMistake({ where, expected: `a plan of ${model.name}`, found: `one of ${plan.model.name}` });
   return {
     options: plan.model.options,
     running: plan.running,
@@ -90,7 +90,7 @@ function checkDomain({ name, domain, unit }: Model['inputs'][number], x: number 
   const suffix = unit === '1' ? '' : ` ${unit}`;
   throw new UserMistake({
     where: `--set ${name}`,
-    expected: `a value from ${domain[0]} to ${domain[1]}${suffix}`,
+    expected: `a value from ${shortNumber(domain[0])} to ${shortNumber(domain[1])}${suffix}`,
     found: String(x),
   });
 }

@@ -2,7 +2,9 @@ import type { CouplingTrace, StoredPoint } from '../../dashboard/commands.js';
 import { VERDICTS } from '../../workers/contract.js';
 import { exp } from '../../workers/numerics/exp.js';
 import { log } from '../../workers/numerics/log.js';
+import { canonicalJson } from '../provenance/canonical.js';
 import type { Plan } from '../scan/plan.js';
+import { readScan } from '../scan/read-scan.js';
 import type { AsyncQuestions } from '../store/reading.js';
 import type { RunRecord } from '../store/records.js';
 import type { PointFacts } from './commands.js';
@@ -10,21 +12,24 @@ import { factsOfResult, resultOfPoint } from './evaluate-point.js';
 import type { PointQuestion } from './evaluate-point.js';
 import { modelNamed } from './models.js';
 import { planOf } from './new-run.js';
+import { USUAL_STORE } from './read-store.js';
 import { resultColumns } from './result-columns.js';
 import { quoted } from './shell.js';
 
-/** One stored point evaluated again from its stored inputs; undefined if the run has no such point. */
+/** One stored point evaluated again from its stored inputs; undefined if the run has no such point.
+ *  @param store path of the store, for the command line that does the same */
 export async function storedPoint(
   questions: AsyncQuestions,
   run: RunRecord,
   stratum: number,
   index: number,
+  store = USUAL_STORE,
 ): Promise<StoredPoint | undefined> {
   const stored = await questions.point(run.id, stratum, index);
   if (stored === undefined) return undefined;
   const plan = planOf(run);
   const question = questionOf(plan, stored);
-  const command = commandLine(run, plan, question);
+  const command = commandLine(run, plan, question, store);
   if (VERDICTS[stored.get('verdict') ?? -1] === 'unfinished') {
     // What ended a worker must not end the dashboard: it is not evaluated here.
     const reason = await questions.reason(run.id, stratum, index);
@@ -63,18 +68,34 @@ function questionOf(plan: Plan, stored: ReadonlyMap<string, number>): PointQuest
   };
 }
 
-/** With the scan file where the run has one of its own: it holds definitions and options of constraints. */
-function commandLine(run: RunRecord, plan: Plan, { model, running, inputs }: PointQuestion): string {
+/** Definitions and constraints come from the scan file where it still is what the run was judged by, else from the run:
+ *  a run that was judged again, and its children, have other requirements than their scan file. */
+function commandLine(
+  run: RunRecord,
+  plan: Plan,
+  { model, running, inputs }: PointQuestion,
+  store: string,
+): string {
   const set = Object.entries(inputs).map(([name, x]) => quoted(`${name}=${x}`));
   const options = Object.entries(plan.model.options).map(([name, x]) => quoted(`${name}=${x}`));
-  const scan =
-    run.relation === 'rejudge' || run.scanFile.name === '' ? [] : ['--scan', quoted(run.scanFile.name)];
+  const place = store === USUAL_STORE ? '' : ` --store ${quoted(store)}`;
+  const frame = isJudgedByFile(run, plan) ? `--scan ${quoted(run.scanFile.name)}` : `--run ${run.id}${place}`;
   return [
     `npx trigpoint point ${model.name} --set ${set.join(' ')}`,
     ...(options.length > 0 ? [`--option ${options.join(' ')}`] : []),
     `--loops ${running.loops} --tolerance ${running.tolerance}`,
-    ...scan,
+    frame,
   ].join(' ');
+}
+
+function isJudgedByFile({ scanFile }: RunRecord, plan: Plan): boolean {
+  if (scanFile.name === '' || scanFile.text === '') return false;
+  const frame = ({ model, define, require, note }: Plan) => canonicalJson([model, define, require, note]);
+  try {
+    return frame(readScan(Buffer.from(scanFile.text), scanFile.name).plan) === frame(plan);
+  } catch {
+    return false; // written for another version, whose rules were others
+  }
 }
 
 const SCALES = 60;

@@ -1,7 +1,7 @@
 import type { InputSpec } from '../../workers/contract.js';
 import { models } from '../../workers/models/catalogue.js';
 import { UserMistake } from '../mistakes.js';
-import { didYouMean, quote } from '../scan/phrases.js';
+import { didYouMean, quote, shortNumber } from '../scan/phrases.js';
 import type { Axis, Plan, Stratum } from '../scan/plan.js';
 import { MOST_VALUES } from '../scan/shape.js';
 import { newBoxes } from './boxes.js';
@@ -86,7 +86,7 @@ function requireAllowed(x: number, input: InputSpec, logarithmic: boolean, where
   if (!(x >= low && x <= high)) {
     throw new UserMistake({
       where,
-      expected: `${input.name} from ${low} to ${high}${unit}`,
+      expected: `${input.name} from ${shortNumber(low)} to ${shortNumber(high)}${unit}`,
       found: `${x}${unit}`,
     });
   }

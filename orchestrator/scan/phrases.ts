@@ -28,6 +28,11 @@ function describeNumber(value: number): string {
   return Number.isFinite(value) ? String(value) : `${value < 0 ? 'minus ' : ''}infinity`;
 }
 
+/** A number in few digits: 1e20, not 100000000000000000000. */
+export function shortNumber(value: number): string {
+  return Math.abs(value) < 1e7 ? String(value) : value.toExponential().replace('e+', 'e');
+}
+
 function describeList(value: readonly unknown[]): string {
   if (value.length === 0) return 'an empty list';
   const flat =

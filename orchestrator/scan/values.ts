@@ -1,7 +1,7 @@
 import type { InputSpec } from '../../workers/contract.js';
 import { check } from './check.js';
 import type { Path } from './path.js';
-import { oneOf } from './phrases.js';
+import { oneOf, shortNumber } from './phrases.js';
 import type { Report } from './report.js';
 import { value } from './shape.js';
 
@@ -58,9 +58,9 @@ export function requireInDomain(x: number, input: InputSpec, path: Path, report:
 }
 
 export function domainText(input: InputSpec): string {
-  return `from ${input.domain[0]} to ${withUnit(input.domain[1], input)}`;
+  return `from ${shortNumber(input.domain[0])} to ${withUnit(input.domain[1], input)}`;
 }
 
 export function withUnit(x: number, input: InputSpec): string {
-  return input.unit === '1' ? String(x) : `${x} ${input.unit}`;
+  return input.unit === '1' ? shortNumber(x) : `${shortNumber(x)} ${input.unit}`;
 }

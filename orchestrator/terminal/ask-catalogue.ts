@@ -5,16 +5,19 @@ import { assignments, finiteNumber, numberAssignments } from '../commands/assign
 import { betas } from '../commands/betas.js';
 import { describeConstraints } from '../commands/constraints.js';
 import { describeModel, listModels } from '../commands/models.js';
+import { findRun } from '../commands/find-run.js';
+import { planOf } from '../commands/new-run.js';
 import { point } from '../commands/point.js';
+import { withReading } from '../commands/read-store.js';
 import { schema } from '../commands/schema.js';
 import { betasText, constraintsText, constraintText, modelsText, modelText } from './catalogue-text.js';
 import { readUserFile } from './files.js';
-import { example, withJson } from './options.js';
+import { example, withJson, withStore } from './options.js';
 import { pointText } from './point-text.js';
 import { answer, write } from './session.js';
 import type { JsonOption, Session } from './session.js';
 
-/** Commands that need no store: point, models, betas, constraints, schema. */
+/** Commands that ask nothing of a store, but for point --run: point, models, betas, constraints, schema. */
 export function askCatalogue(program: Command, session: Session): void {
   pointCommand(program, session);
   modelsCommand(program, session);
@@ -29,24 +32,27 @@ interface PointOptions extends JsonOption {
   readonly loops?: string;
   readonly tolerance?: string;
   readonly scan?: string;
+  readonly run?: string;
+  readonly store: string;
 }
 
 function pointCommand(program: Command, session: Session): void {
   const command = program
     .command('point <model>')
     .description(
-      'evaluate one point; without --scan every constraint of the catalogue decides, with its default options',
+      'evaluate one point; without --scan or --run every constraint of the catalogue decides, with its default options',
     )
     .option('--set <name=value...>', 'inputs in their own units (the others have their defaults)')
     .option('--option <name=value...>', 'options of the model')
     .addOption(new Option('--loops <n>', 'order of the beta functions (default: 3)').choices(['1', '2', '3']))
     .option('--tolerance <x>', 'wanted relative error of the couplings (default: 1e-9)')
-    .option('--scan <file>', 'definitions, fixed inputs, running and constraints of this scan file');
+    .option('--scan <file>', 'definitions, fixed inputs, running and constraints of this scan file')
+    .addOption(new Option('--run <run>', 'the same, of this run').conflicts('scan'));
   example(
-    withJson(command),
+    withJson(withStore(command)),
     'point sm --set Mt=173.34 Mh=125.15 alphaS=0.1184 MW=80.384 cutoff=1.2209e19 --json',
   ).action(async (model: string, options: PointOptions) => {
-    const { scan, loops, tolerance } = options;
+    const { scan, run, loops, tolerance, store } = options;
     const facts = point({
       model,
       set: numberAssignments(options.set ?? [], '--set'),
@@ -54,6 +60,7 @@ function pointCommand(program: Command, session: Session): void {
       loops: loops === undefined ? undefined : (Number(loops) as RunningSettings['loops']),
       tolerance: tolerance === undefined ? undefined : finiteNumber(tolerance, '--tolerance'),
       scan: scan === undefined ? undefined : { bytes: readUserFile(scan), file: scan },
+      plan: run === undefined ? undefined : await withReading(store, (open) => planOf(findRun(open, run))),
     });
     await answer(session, options, facts, pointText);
   });

@@ -1,7 +1,10 @@
 import { describe, expect, it } from 'vitest';
 import { launch } from '../../../orchestrator/commands/launch.js';
+import { extend } from '../../../orchestrator/commands/extend.js';
 import { point } from '../../../orchestrator/commands/point.js';
+import { rejudge } from '../../../orchestrator/commands/rejudge.js';
 import { storedPoint } from '../../../orchestrator/commands/stored-point.js';
+import type { Plan } from '../../../orchestrator/scan/plan.js';
 import { startReader } from '../../../orchestrator/store/reader-thread.js';
 import { newStore, plane, reading, scan, work } from './small-runs.js';
 
@@ -75,6 +78,23 @@ describe('point', () => {
     const start = found.facts.couplings[0].values;
     expect(found.trace.values.map(([first]) => first)).toEqual(Object.values(start));
     expect(await storedPoint(questions, run, 0, 10)).toBeUndefined();
+    await questions.close();
+  });
+
+  it('of a run that was judged again, or of a child of it, has a command that judges as that run does', async () => {
+    const store = newStore();
+    await launch(plane(10), work(store));
+    await rejudge('1', scan('require: [measured-top-mass]\nnote: []\n', 'other.yaml'), work(store));
+    await extend('2', { points: ['20'] }, work(store));
+    const questions = startReader(store);
+    for (const id of [2, 3]) {
+      const run = (await questions.run(id))!;
+      const { facts, command } = (await storedPoint(questions, run, 0, 3, store))!;
+      expect(command).toContain(`--tolerance 1e-9 --run ${id} --store ${store}`);
+      const plan = JSON.parse(run.plan) as Plan;
+      const set = Object.fromEntries(Object.entries(facts.inputs).map(([name, { value }]) => [name, value!]));
+      expect(point({ model: 'sm', set, options: {}, plan }).fingerprint).toBe(facts.fingerprint);
+    }
     await questions.close();
   });
 
