@@ -8,8 +8,9 @@ export function countText(n: number): string {
   return String(Math.round(n)).replace(/\B(?=(\d{3})+$)/g, '\u202f');
 }
 
-/** A physical value with its significant digits and, where it is far from 1, a power of ten. */
-export function valueHtml(value: number | null | undefined, digits = 6): Safe {
+/** A physical value with its significant digits and, where it is far from 1, a power of ten.
+ *  @param digits at most; 'all' means as many as tell the number from every other */
+export function valueHtml(value: number | null | undefined, digits: number | 'all' = 6): Safe {
   if (value === null || value === undefined || Number.isNaN(value)) {
     return html`<span class="absent">–<span class="unseen">absent</span></span>`;
   }
@@ -44,13 +45,13 @@ export function digestShort(digest: string): string {
   return digest.replace(/^sha256:/, '').slice(0, 12);
 }
 
-function split(value: number, digits: number): { mantissa: string; exponent: number } {
+function split(value: number, digits: number | 'all'): { mantissa: string; exponent: number } {
   if (!Number.isFinite(value)) return { mantissa: value > 0 ? '∞' : '-∞', exponent: 0 };
   const magnitude = Math.abs(value);
   if (value === 0 || (magnitude >= 1e-3 && magnitude < 1e6)) {
-    return { mantissa: String(Number(value.toPrecision(digits))), exponent: 0 };
+    return { mantissa: String(digits === 'all' ? value : Number(value.toPrecision(digits))), exponent: 0 };
   }
-  const [mantissa, exponent] = value.toExponential(digits - 1).split('e');
+  const [mantissa, exponent] = value.toExponential(digits === 'all' ? undefined : digits - 1).split('e');
   return { mantissa: String(Number(mantissa)), exponent: Number(exponent) };
 }
 

@@ -29,7 +29,7 @@ export function inputTable(
         const { value, unit } = facts.inputs[name];
         return html`<tr>
           ${nameCell(name, input)}
-          <td class="number">${valueHtml(value, 17)}</td>
+          <td class="number">${valueHtml(value, 'all')}</td>
           <td>${unitHtml(unit)}</td>
           <td>${varied.has(name) ? 'varied' : 'fixed'}</td>
           <td>${input && usualValue(input)}</td>
@@ -40,7 +40,7 @@ export function inputTable(
 }
 
 function usualValue(input: InputInfo): Safe {
-  return html`${valueHtml(input.default)}${
+  return html`${valueHtml(input.default, 'all')}${
       input.uncertainty !== null && html` ± ${valueHtml(input.uncertainty)}`
     }<span class="under">${sourceHtml(input.source)}</span>`;
 }

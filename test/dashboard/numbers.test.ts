@@ -25,6 +25,15 @@ describe('numbers on pages', () => {
     expect(valueText(null)).toBe('absent');
   });
 
+  it('writes a number with all its digits and no more', () => {
+    expect(valueHtml(1.1663788e-5, 'all').text).toBe(
+      '<data value="0.000011663788">1.1663788&thinsp;×&thinsp;10<sup>−5</sup></data>',
+    );
+    expect(valueHtml(0.1 + 0.2, 'all').text).toBe(
+      '<data value="0.30000000000000004">0.30000000000000004</data>',
+    );
+  });
+
   it('keeps every digit where seventeen are asked', () => {
     expect(Number(valueText(0.1 + 0.2, 17))).toBe(0.1 + 0.2);
   });
