@@ -24,13 +24,14 @@ export interface CompareFacts {
   readonly verdicts: Readonly<Record<string, number>>;
   /** Of the same points: those with any value that differs in any bit. */
   readonly changed: number;
-  /** Columns both runs have, with the points in which they differ and the largest |second - first|. */
+  /** Columns both runs have, with the points in which they differ and the largest |second - first|: null for classes. */
   readonly columns: readonly {
     readonly name: string;
     readonly points: number;
     readonly largest: number | null;
   }[];
   readonly onlyIn: { readonly first: readonly string[]; readonly second: readonly string[] };
+  /** Some of the points that changed, those with another verdict first. */
   readonly examples: readonly {
     readonly stratum: number;
     readonly index: number;
@@ -47,7 +48,7 @@ const EXAMPLES = 10;
 export function compare(reading: Reading, firstWord: string, secondWord: string): CompareFacts {
   const runs = [findRun(reading, firstWord), findRun(reading, secondWord)] as const;
   const names = sharedColumns(reading, runs);
-  const account = newAccount(names.values);
+  const account = newAccount(names.values, names.classes);
   for (const pair of pairedBatches(reading, [runs[0].id, runs[1].id], [...names.inputs, ...names.values]))
     account.add(pair, names.inputs);
   return {
@@ -79,6 +80,7 @@ function sharedColumns(reading: Reading, runs: readonly [RunRecord, RunRecord]) 
   return {
     inputs: names(shared.filter((column) => column.kind === 'input')),
     values: names(shared.filter((column) => column.kind !== 'input')),
+    classes: new Set(names(shared.filter((column) => column.labels !== undefined))),
     onlyIn: {
       first: names(first.filter((column) => !has(second, column.name))),
       second: names(second.filter((column) => !has(first, column.name))),
@@ -86,21 +88,23 @@ function sharedColumns(reading: Reading, runs: readonly [RunRecord, RunRecord]) 
   };
 }
 
-function newAccount(values: readonly string[]) {
+function newAccount(values: readonly string[], classes: ReadonlySet<string>) {
   const total = { same: 0, otherInputs: 0, changed: 0 };
   const verdicts: Record<string, number> = {};
   const columns = new Map(values.map((name) => [name, { points: 0, largest: null as number | null }]));
-  const examples: CompareFacts['examples'][number][] = [];
+  const judgedOtherwise: CompareFacts['examples'][number][] = [];
+  const judgedTheSame: CompareFacts['examples'][number][] = [];
   const note = (pair: Pair, row: number, names: readonly string[]) => {
     const [from, to] = pair.columns.map((side) => VERDICTS[side.get('verdict')![row]]);
     if (from !== to) verdicts[`${from} to ${to}`] = (verdicts[`${from} to ${to}`] ?? 0) + 1;
     for (const name of names) {
       const entry = columns.get(name)!;
       entry.points += 1;
-      entry.largest = larger(entry.largest, distance(pair, name, row));
+      if (!classes.has(name)) entry.largest = larger(entry.largest, distance(pair, name, row));
     }
     total.changed += 1;
     const { stratum, first } = pair;
+    const examples = from === to ? judgedTheSame : judgedOtherwise;
     if (examples.length < EXAMPLES)
       examples.push({ stratum, index: first + row, verdicts: [from, to], columns: names });
   };
@@ -126,7 +130,7 @@ function newAccount(values: readonly string[]) {
         verdicts,
         changed,
         columns: changedColumns.filter((column) => column.points > 0),
-        examples,
+        examples: [...judgedOtherwise, ...judgedTheSame].slice(0, EXAMPLES),
       };
     },
   };

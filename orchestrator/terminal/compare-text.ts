@@ -4,6 +4,7 @@ import { count, value } from './numbers.js';
 import { table } from './table.js';
 
 const SHOWN = 60;
+const SHOWN_COLUMNS = 3;
 
 export function compareText(facts: CompareFacts): string {
   const [first, second] = facts.runs;
@@ -18,12 +19,7 @@ export function compareText(facts: CompareFacts): string {
   const verdicts = Object.entries(facts.verdicts).map(([change, n]) => [change, count(n)]);
   if (verdicts.length > 0) lines.push('', table(['verdict', 'points'], verdicts));
   if (facts.columns.length > 0) lines.push('', columnsText(facts));
-  for (const {
-    stratum,
-    index,
-    verdicts: [from, to],
-  } of facts.examples)
-    lines.push(`point ${stratum}.${index}: ${from === to ? from : `${from}, then ${to}`}`);
+  if (facts.examples.length > 0) lines.push('', examplesText(facts));
   lines.push(
     '',
     facts.explained.length > 0
@@ -32,6 +28,20 @@ export function compareText(facts: CompareFacts): string {
   );
   if (facts.explained.length > 0) lines.push(differencesText(facts.explained));
   return lines.join('\n');
+}
+
+/** Some of the points that changed. */
+function examplesText({ examples }: CompareFacts): string {
+  const rows = examples.map(({ stratum, index, verdicts: [from, to], columns }) => {
+    const values = columns.filter((name) => name !== 'verdict');
+    const more = values.length > SHOWN_COLUMNS ? ', ...' : '';
+    return [
+      `${stratum}.${index}`,
+      from === to ? from : `${from} to ${to}`,
+      values.slice(0, SHOWN_COLUMNS).join(', ') + more,
+    ];
+  });
+  return table(['for instance', 'verdict', 'changed too'], rows);
 }
 
 function columnsText(facts: CompareFacts): string {

@@ -208,6 +208,8 @@ describe('rejudge', () => {
     expect(facts.digest).toBe(whole.digest);
     const change = await reading(store, (open) => compare(open, '1', '2'));
     expect(change.points.same).toBe(200);
+    expect(change.examples.map(({ verdicts }) => verdicts.join(' to '))).toContain('surviving to excluded');
+    expect(change.columns.find(({ name }) => name === 'verdict')).toMatchObject({ largest: null });
     expect(change.explained.map((d) => d.where)).toContain('require[1].options.accept');
   });
 
