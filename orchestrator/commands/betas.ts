@@ -20,7 +20,7 @@ export function betas(name: string, at: Readonly<Record<string, number>>): Betas
   const known = model.couplings.map((coupling) => coupling.name);
   checkNames(Object.keys(at), known, '--at', `a coupling of ${name}`);
   try {
-    return { format: 1, model: name, at, couplings: model.betas(at) };
+    return { format: 1, model: name, at, couplings: finite(model.betas(at)) };
   } catch (error) {
     // Couplings that contradict each other, e.g. gY and g1.
     if (!(error instanceof RangeError)) throw error;
@@ -31,4 +31,14 @@ export function betas(name: string, at: Readonly<Record<string, number>>): Betas
     ];
     throw new UserMistake({ where: '--at', expected, found });
   }
+}
+
+function finite(couplings: BetasFacts['couplings']): BetasFacts['couplings'] {
+  const lost = Object.keys(couplings).find((name) => !Number.isFinite(couplings[name].total));
+  if (lost === undefined) return couplings;
+  throw new UserMistake({
+    where: '--at',
+    expected: 'couplings whose beta functions are numbers',
+    found: `values so large that d${lost}/dt is none`,
+  });
 }

@@ -24,7 +24,7 @@ function unknownName(name: string, known: readonly string[], where: string, kind
   const near = nearest(name, known);
   return new UserMistake({
     where,
-    expected: `${kind}: ${shortList(known)}`,
+    expected: `${kind}${known.length === 0 ? ', of which there is none' : `: ${shortList(known)}`}`,
     found: JSON.stringify(name),
     hint: near === undefined ? undefined : `did you mean ${near}?`,
   });

@@ -51,6 +51,8 @@ export function readTree(text: string, file: string): Tree {
 function syntaxComplaint(code: string, message: string, found: string): Complaint {
   if (code === 'MULTIPLE_DOCS')
     return { expected: 'one document', found: 'several, separated by "---" or "..."' };
+  if (message.includes('call stack'))
+    return { expected: `at most ${DEEPEST} levels`, found: 'a far deeper one' };
   const first = found.split('\n')[0].trim();
   const hint = message.slice(0, 120).replace(/^./, (letter) => letter.toLowerCase());
   return { expected: 'valid YAML', found: first ? quote(first) : 'something else', hint };

@@ -1,12 +1,12 @@
 import { closeSync, fstatSync, openSync, readSync } from 'node:fs';
-import { UserMistake } from '../mistakes.js';
+import { FileMistakes, UserMistake } from '../mistakes.js';
 import { bytes } from './numbers.js';
 
 /** More than any scan file needs: a larger one is refused before it costs memory. */
 const MOST_BYTES = 16_000_000;
 
 /** The bytes of a file that the user named.
- *  @throws UserMistake where it cannot be read or is no file */
+ *  @throws UserMistake where it cannot be read or is no file, FileMistakes where it is too large */
 export function readUserFile(path: string): Uint8Array {
   const file = openFile(path);
   try {
@@ -34,7 +34,8 @@ function checked(path: string, file: number) {
   const found = !status.isFile() ? (status.isDirectory() ? 'a folder' : 'a device') : undefined;
   if (found) throw new UserMistake({ where: path, expected: 'a file', found });
   if (status.size <= MOST_BYTES) return status;
-  throw new UserMistake({ where: path, expected: `at most ${bytes(MOST_BYTES)}`, found: bytes(status.size) });
+  const mistake = { expected: `at most ${bytes(MOST_BYTES)}`, found: bytes(status.size) };
+  throw new FileMistakes(path, [{ line: 1, column: 1, path: '', ...mistake }]);
 }
 
 const REASONS: Readonly<Record<string, string>> = {

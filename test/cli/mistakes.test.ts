@@ -52,7 +52,16 @@ describe('a mistake in what was asked', () => {
     ],
     ['a word that sets nothing', ['point', 'sm', '--set', 'Mt'], /--set: expected name=value, found "Mt"/],
     ['a fourth loop', ['point', 'sm', '--loops', '4'], /--loops <n>.*'4' is invalid.*1, 2, 3/],
-    ['an option the model lacks', ['point', 'sm', '--option', 'xH=1'], /--option: expected an option of sm/],
+    [
+      'an option the model lacks',
+      ['point', 'sm', '--option', 'xH=1'],
+      /--option: expected an option of sm, of which there is none, found "xH"/,
+    ],
+    [
+      'couplings too large',
+      ['betas', 'sm', '--at', 'yt=1e200'],
+      /--at: expected couplings whose beta functions/,
+    ],
     ['an unknown coupling', ['betas', 'sm', '--at', 'g4=1'], /--at: expected a coupling of sm: .*found "g4"/],
     [
       'couplings that disagree',
@@ -87,7 +96,7 @@ describe('a mistake in what was asked', () => {
     const folder = newFolder();
     writeFileSync(join(folder, 'huge.yaml'), '');
     truncateSync(join(folder, 'huge.yaml'), 100_000_000);
-    await expectMistake(['launch', 'huge.yaml'], /huge\.yaml: expected at most .*, found 100 MB/, folder);
+    await expectMistake(['launch', 'huge.yaml'], /huge\.yaml:1:1: expected at most .*, found 100 MB/, folder);
   });
 
   it('a folder in place of the store', async () => {

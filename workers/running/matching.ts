@@ -26,7 +26,7 @@ const GIVES: readonly QuantitySpec[] = [
     symbol: '\\mathrm{matching}',
     meaning: 'whether the inputs lie where the published matching at M_t was made',
     labels: ['inside', 'outside'],
-    caution: 'outside, the couplings at M_t are extrapolated beyond their quoted errors',
+    caution: 'where outside, the couplings at M_t are extrapolated beyond their quoted errors',
   },
 ];
 
