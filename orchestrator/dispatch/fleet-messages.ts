@@ -1,7 +1,7 @@
 import { createHash } from 'node:crypto';
 import type { PointsBlock, ResultBlock, Task } from '../../workers/contract.js';
 import { LOSS_REASONS, type ChunkJob, type LossReason } from './dispatcher.js';
-import { lengthOf, PARTS, type Part } from './result-shape.js';
+import { lengthOf, PARTS, wrongShape, type Part } from './result-shape.js';
 
 /** What travels between a coordinator and the workers of its fleet. Numbers travel as little-endian bytes. */
 
@@ -47,7 +47,7 @@ export function resultBytes(result: ResultBlock): Buffer {
   return Buffer.concat(PARTS.map((part) => bytesOf(result[part])));
 }
 
-/** @throws Error if the bytes are not those of `count` points of this task */
+/** @throws Error if the bytes are not those of a result of `count` points of this task */
 export function resultOf(task: Task, count: number, bytes: Buffer): ResultBlock {
   const expected = PARTS.reduce((sum, part) => sum + lengthOf(part, task, count) * widthOf(part), 0);
   if (bytes.length !== expected) throw new Error(`expected ${expected} bytes, found ${bytes.length}`);
@@ -60,7 +60,10 @@ export function resultOf(task: Task, count: number, bytes: Buffer): ResultBlock 
     at += array.byteLength;
     return [part, array] as const;
   });
-  return { count, ...Object.fromEntries(arrays) } as unknown as ResultBlock;
+  const result = { count, ...Object.fromEntries(arrays) } as unknown as ResultBlock;
+  const wrong = wrongShape(task, count, result);
+  if (wrong) throw new Error(wrong);
+  return result;
 }
 
 export function answerFields(answer: Answer): (string | Buffer)[] {

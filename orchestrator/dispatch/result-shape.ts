@@ -1,4 +1,5 @@
 import type { ResultBlock, Task } from '../../workers/contract.js';
+import { FAILURES, OUTCOMES, VERDICTS } from '../../workers/contract.js';
 
 export type Part = Exclude<keyof ResultBlock, 'count'>;
 
@@ -26,5 +27,21 @@ export function wrongShape(task: Task, count: number, result: ResultBlock): stri
     const found = result[part]?.length;
     if (found !== expected) return `expected ${expected} ${part}, found ${found ?? 'none'}`;
   }
+  return wrongCode(result);
+}
+
+/** A code that stands for nothing would be counted and stored as if it did. */
+function wrongCode(result: ResultBlock): string | undefined {
+  for (const [part, words] of CODES) {
+    const stranger = result[part].find((code) => !(code < words));
+    if (stranger !== undefined) return `expected ${part} below ${words}, found ${stranger}`;
+  }
   return undefined;
 }
+
+/** A worker never says unfinished, the last verdict. */
+const CODES = [
+  ['outcomes', OUTCOMES.length],
+  ['failures', FAILURES.length],
+  ['verdicts', VERDICTS.length - 1],
+] as const;
