@@ -16,6 +16,7 @@ export function pageRoutes(deps: DashboardDeps): Router {
   router.get('/', async (_request, response) => {
     response.type('html').send(runsPage(await deps.questions.runs()));
   });
+  router.get('/runs', (_request, response) => response.redirect('/'));
   router.get('/runs/:run', async (request, response) => {
     const bare = queryOf(request).size === 0;
     const part = bare ? await firstPart(request, deps) : undefined;

@@ -57,7 +57,7 @@ function sizeOf(raw: unknown): number {
 function readOne(raw: unknown, shared: Axes, report: Report): Draft | undefined {
   const shape = mapping(sample, 'a mapping with method and points, or a list of strata');
   const found = check(shape, raw === undefined ? {} : raw, ['sample'], report);
-  return found && { path: ['sample'], name: 'stratum-1', ...withMethod(found), axes: shared, varies: false };
+  return found && { path: ['sample'], name: 'stratum-0', ...withMethod(found), axes: shared, varies: false };
 }
 
 function readList(
@@ -95,7 +95,7 @@ function readStratum(
   );
   const shape = mapping(stratumShape, 'a stratum: a mapping with name, method, points and vary');
   const found = check(shape, isMapping(raw) ? Object.fromEntries(known) : raw, path, report);
-  const name = found?.name ?? `stratum-${i + 1}`;
+  const name = found?.name ?? `stratum-${i}`;
   const axes = new Map([...shared, ...own]);
   return found && { path, name, ...withMethod(found), axes, varies: sizeOf(vary) > 0 };
 }

@@ -27,9 +27,10 @@ export function checkText({ plan, fingerprint, points, estimate }: CheckFacts): 
   return `${table([], rows)}\n\n${plan.strata.map(stratumText).join('\n')}\n\n${cost}${remarks}`;
 }
 
-function stratumText(stratum: Stratum): string {
+function stratumText(stratum: Stratum, i: number): string {
   const rows = stratum.vary.map((axis) => ['', axis.input, axisText(axis)]);
-  return `stratum ${stratum.name}: ${stratum.method}, ${count(stratum.points)} points\n${table([], rows)}`;
+  const name = stratum.name === `stratum-${i}` ? '' : `, ${stratum.name}`;
+  return `stratum ${i}${name}: ${stratum.method}, ${count(stratum.points)} points\n${table([], rows)}`;
 }
 
 function axisText(axis: Axis): string {

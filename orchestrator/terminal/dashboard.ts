@@ -4,6 +4,7 @@ import { Broken } from '../mistakes.js';
 import { startReader } from '../store/reader-thread.js';
 import { PORT } from './options.js';
 import type { PlaceOptions } from './options.js';
+import { remark } from './session.js';
 import type { Session } from './session.js';
 
 export interface OpenDashboard {
@@ -23,7 +24,7 @@ export async function openDashboard(
   const questions = startReader(store);
   const listen = (port: number) => session.serveDashboard({ questions, store }, { port, host: options.bind });
   try {
-    const dashboard = await onSomePort(options, listen);
+    const dashboard = await onSomePort(options, session, listen);
     return {
       address: dashboard.address,
       async close() {
@@ -37,13 +38,20 @@ export async function openDashboard(
   }
 }
 
-async function onSomePort<T>(options: PlaceOptions, listen: (port: number) => Promise<T>): Promise<T> {
+async function onSomePort<T>(
+  options: PlaceOptions,
+  session: Session,
+  listen: (port: number) => Promise<T>,
+): Promise<T> {
   const asked = options.port === undefined ? undefined : wholeNumber(options.port, '--port', 0, 65535);
   try {
     return await listen(asked ?? PORT);
   } catch (error) {
     const { code } = error as NodeJS.ErrnoException;
-    if (code === 'EADDRINUSE' && asked === undefined) return await listen(0);
+    if (code === 'EADDRINUSE' && asked === undefined) {
+      remark(session, `port ${PORT} is taken, so the dashboard takes a free one; --port chooses`);
+      return await listen(0);
+    }
     if (code === undefined || !REASONS.has(code)) throw error;
     const place = `${options.bind}:${asked ?? PORT}`;
     throw new Broken('no-port', `the dashboard cannot listen on ${place}: ${REASONS.get(code)}`, {

@@ -34,6 +34,10 @@ describe('the list of runs', () => {
     expect(text).toContain('npx trigpoint launch scans/electroweak-vacuum.yaml');
   });
 
+  it('is found under /runs too', async () => {
+    expect((await get('/runs')).status).toBe(302);
+  });
+
   it('shows the run with its digest and share, and its title as text', async () => {
     const page = await get('/');
     expect(page.text).toContain('A plane &lt;b&gt;for&lt;/b&gt; tests &amp; &#39;others&#39;');

@@ -105,7 +105,7 @@ ${PLANE}`);
   test('a grid takes no number of points and is told what it can take', () => {
     const grid = planOf(`sample: { method: grid }\nvary: { Mt: { range: [165, 180], steps: 61 } }`);
     expect(() => extendPlan(grid, { points: 100 })).toThrow(/a grid.*--vary Mt=165:180:121 makes it finer/);
-    expect(() => extendPlan(grid, { points: { 'stratum-1': 100 } })).toThrow(/--vary Mt=165:180:121/);
+    expect(() => extendPlan(grid, { points: { 'stratum-0': 100 } })).toThrow(/--vary Mt=165:180:121/);
   });
 
   test('nothing new is a mistake', () => {

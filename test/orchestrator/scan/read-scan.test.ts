@@ -43,7 +43,7 @@ describe('a plan', () => {
       seed: '1',
       strata: [
         {
-          name: 'stratum-1',
+          name: 'stratum-0',
           method: 'sobol',
           generation: 0,
           points: 10000,
@@ -187,7 +187,7 @@ fix: { alphaS: 0.119 }`);
         ],
       },
       {
-        name: 'stratum-2',
+        name: 'stratum-1',
         method: 'grid',
         generation: 0,
         points: 24,
