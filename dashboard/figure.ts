@@ -28,6 +28,8 @@ export interface Figure {
   readonly caption: Safe;
   /** How it was drawn: kind, how many points are missing from it. */
   readonly remark: string;
+  /** What must be known of the columns it shows. */
+  readonly cautions: readonly string[];
   draw(setting: Setting): string;
 }
 
@@ -79,6 +81,7 @@ async function asPoints(
   return {
     summary: `Points in the plane of ${nameOf(y)} against ${nameOf(x)}${colourPhrase(colour)}.`,
     caption: captionOf('Points', x, y, colour),
+    cautions: cautionsOf([x, y, colour]),
     remark: `${some}${countText(drawn)} points drawn${absentPhrase(counts.points - found.total + found.x.length - drawn)}`,
     draw: (setting) => scatterPlot(setting, spec),
   };
@@ -110,6 +113,7 @@ async function asCells(
   return {
     summary: `${kind} in the plane of ${nameOf(y)} against ${nameOf(x)}${colourPhrase(colour)}.${classPhrase(grid)}`,
     caption: captionOf(kind, x, y, colour),
+    cautions: cautionsOf([x, y, colour]),
     remark: `${cells}${grid.classes ? ', colours mixed by share and smoothed over neighbours' : ''}${absentPhrase(grid.undrawn)}`,
     draw: gridDrawing(axes, grid, colour),
   };
@@ -209,6 +213,10 @@ function cellsFor(points: number): readonly [number, number] {
 
 function placed(axis: Axis, value: number): boolean {
   return value >= axis.low && value <= axis.high;
+}
+
+function cautionsOf(columns: readonly (ColumnRecord | undefined)[]): string[] {
+  return [...new Set(columns.flatMap((column) => column?.caution ?? []))];
 }
 
 function nameOf(column: ColumnRecord): string {

@@ -4,6 +4,7 @@ import type { Figure } from '../figure.js';
 import { html, raw, type Part, type Safe } from '../html.js';
 import { countText, digestShort } from '../numbers.js';
 import { NARROW, WIDE } from '../plots/drawing.js';
+import { proseHtml } from '../prose.js';
 import { percentText } from '../share.js';
 import { viewQuery, type RunView } from '../view.js';
 import { pointsTable } from './points-table.js';
@@ -49,12 +50,14 @@ export function captionLines({ run, where, counts, figure }: Omit<ResultParts, '
   ];
 }
 
-function countsLine({ view, where, counts }: ResultParts): Safe {
+function countsLine({ run, view, where, counts }: ResultParts): Safe {
+  const ended = run.state === 'complete' || run.state === 'incomplete';
+  const whole = ended ? 'of the run' : 'of those computed so far';
   const mistaken = where === '' && (view.where !== '' || view.only.length > 0 || view.ranges.length > 0);
   return html`<div class="sheet counts">
     <p class="count">
       <strong>${countText(counts.points)}</strong> of ${countText(counts.total)} points
-      ${counts.total > 0 && html`<span class="under">${percentText(counts.points, counts.total)} of the run</span>`}
+      ${counts.total > 0 && html`<span class="under">${percentText(counts.points, counts.total)} ${whole}</span>`}
     </p>
     <p>${verdicts(counts)}</p>
     ${where !== '' && html`<p class="filter">Filter: <code>${where}</code></p>`}
@@ -83,6 +86,7 @@ function figurePart(parts: ResultParts): Part {
     <div class="narrow-only">${raw(figure.draw({ ...setting, size: NARROW }))}</div>
     <figcaption>
       <p>${figure.caption} ${figure.remark}.</p>
+      ${figure.cautions.map((caution) => html`<p>Caution: ${proseHtml(caution)}.</p>`)}
       <p>
         Run ${run.id},
         “${run.title}”${

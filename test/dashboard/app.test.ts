@@ -129,6 +129,12 @@ describe('a run page', () => {
     expect(text.replace(/base64,[^"]+/g, '')).not.toMatch(/NaN|Infinity|undefined/);
   });
 
+  it('has the cautions of what its figure shows beside it, each once', async () => {
+    const page = textOf(await get('/runs/1?x=Mt&y=instabilityScale&colour=barrierField'));
+    expect(page.match(/Caution: the scale depends on the gauge of the effective potential/g)).toHaveLength(1);
+    expect(page).toContain('100.0 % of the run');
+  });
+
   it('draws any two columns against each other, and any third as colour', async () => {
     const columns = (await dashboard.questions.columns(1)).map((column) => column.name);
     expect(columns.length).toBeGreaterThan(30);
