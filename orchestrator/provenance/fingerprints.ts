@@ -27,13 +27,19 @@ export function codeOfTask(task: Task): Pick<Fingerprints, 'model' | 'modules' |
     model: codeOf(model.code),
     modules: {
       ...Object.fromEntries(modules.map((module) => [module.name, codeOf(module.code)])),
-      // What calls the modules, judges and compiles definitions.
+      // What calls the modules and compiles definitions.
       evaluation: codeOf(here('../../workers/evaluate.js')),
     },
     constraints: Object.fromEntries(
-      task.constraints.map(({ name }) => [name, codeOf(known(constraints, name, 'constraint').code)]),
+      task.constraints.map(({ name }) => [name, judging(known(constraints, name, 'constraint').code)]),
     ),
   };
+}
+
+/** A judgement is a function of its constraint and of the code that applies it: a run that was judged again keeps its
+ *  parent's modules, not its parent's way of judging. */
+function judging(url: string): string {
+  return fingerprint([codeOf(url), codeOf(here('../../workers/judge.js'))]);
 }
 
 /** A catalogue only says where things are: what a plan uses of it has a fingerprint of its own, and what it does
