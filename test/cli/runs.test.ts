@@ -97,28 +97,28 @@ describe('progress', () => {
 
 describe('Ctrl-C', () => {
   it('pauses the run with status 130; launched again, it ends with the digest of an undisturbed run', async () => {
-    const cwd = folderWithScans(6000);
+    const cwd = folderWithScans(30_000);
     const running = start(['launch', 'plane.yaml', '--json'], { cwd });
-    await running.saying(/^\d+ % {2}[1-9][\d,]* of 6,000/m);
+    await running.saying(/^\d+ % {2}[1-9][\d,]* of 30,000/m);
     running.process.kill('SIGINT');
     const stopped = await running.ended;
     expect(stopped.status).toBe(130);
     const paused = JSON.parse(stopped.out) as { state: string; points: number };
     expect(paused.state).toBe('paused');
-    expect(paused.points).toBeLessThan(6000);
+    expect(paused.points).toBeLessThan(30_000);
     expect(stopped.err).toMatch(/run 1 is paused: the same command again goes on with it/);
     const resumed = await document(['launch', 'plane.yaml'], { cwd });
-    expect(resumed).toMatchObject({ run: 1, how: 'resumed', state: 'complete', points: 6000 });
-    const undisturbed = await document(['launch', 'plane.yaml'], { cwd: folderWithScans(6000) });
+    expect(resumed).toMatchObject({ run: 1, how: 'resumed', state: 'complete', points: 30_000 });
+    const undisturbed = await document(['launch', 'plane.yaml'], { cwd: folderWithScans(30_000) });
     expect(resumed.digest).toBe(undisturbed.digest);
   });
 
   it('ends a command that only reads at once', async () => {
-    const cwd = folderWithScans(6000);
+    const cwd = folderWithScans(100_000);
     const running = start(['launch', 'plane.yaml'], { cwd });
     await running.saying(/^\d+ % {2}[1-9]/m);
     const watching = start(['watch'], { cwd });
-    await watching.saying(/of 6,000 points/);
+    await watching.saying(/of 100,000 points/);
     watching.process.kill('SIGINT');
     expect((await watching.ended).status).toBe(130);
     running.process.kill('SIGINT');
