@@ -1,6 +1,7 @@
 import { html, type Part, type Safe } from '../html.js';
 import { mayMove, type Moment } from '../live.js';
 import { countText, durationText } from '../numbers.js';
+import { partsOf } from '../parts.js';
 import { shareHtml } from '../share.js';
 import { verdictBar } from './verdict-bar.js';
 
@@ -11,7 +12,7 @@ export function progressHtml(moment: Moment): Safe {
   return html`${verdictBar(counts, run.wanted)}
     <dl class="gauges">
       ${gauge('Points', countText(counts.points), `of ${countText(run.wanted)}`)}
-      ${gauge('Surviving', shareHtml(counts.surviving, counts.points), countText(counts.surviving), 'surviving')}
+      ${gauge('Surviving', shareHtml(counts.surviving, counts.points), survivingNote(moment), 'surviving')}
       ${gauge('Excluded', countText(counts.excluded), null, 'excluded')}
       ${gauge('Failed', countText(counts.failed), failedNote(moment), 'failed')}
       ${counts.unfinished > 0 && gauge('Unfinished', countText(counts.unfinished), 'no worker could do them', 'unfinished')}
@@ -50,6 +51,13 @@ function speed({ run, pointsPerSecond, secondsLeft }: Moment): Safe {
   }
   const left = secondsLeft === null ? 'time left not known yet' : `${durationText(secondsLeft)} left`;
   return gauge('Points per second', pointsPerSecond === null ? '–' : countText(pointsPerSecond), left);
+}
+
+/** Parts of a plan have ranges and priors of their own: their common share is one of points, not of any prior. */
+function survivingNote({ run }: Moment): string {
+  const parts = partsOf(run).length;
+  const count = countText(run.counts.surviving);
+  return parts > 1 ? `${count}, ${parts} parts of the plan together` : count;
 }
 
 function failedNote({ run }: Moment): string {
