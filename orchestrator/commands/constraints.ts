@@ -1,18 +1,9 @@
-import type { Constraint, OptionSpec, Source } from '../../workers/contract.js';
+import type { Constraint } from '../../workers/contract.js';
 import { constraints } from '../../workers/constraints/catalogue.js';
 import { named } from './named.js';
 
-export interface ConstraintFacts {
-  readonly name: string;
-  readonly title: string;
-  readonly needs: readonly string[];
-  readonly options: Readonly<Record<string, OptionSpec>>;
-  readonly marginScale: string;
-  readonly formula: string;
-  readonly sources: readonly Source[];
-  readonly validity: string;
-  readonly neglects: string;
-}
+/** What a constraint says of itself: all but its code. */
+export type ConstraintFacts = Omit<Constraint, 'code' | 'judge' | 'explain'>;
 
 export interface ConstraintsFacts {
   readonly format: 1;

@@ -6,7 +6,9 @@ import { G2, G3, GY, LAMBDA, LOOP, YT } from './state.js';
  * (arXiv:1201.5868), Chetyrkin and Zoller (arXiv:1205.2892, 1303.2890) and Bednyakov, Pikelner and Velizhanin
  * (arXiv:1210.6873, 1212.6829, 1303.4364). Written from memory and confirmed by the published couplings at the
  * Planck scale (test/published/) and, for lambda, yt and the leading terms in g3, by their closed forms
- * (sm-three-loops.test.ts). yb, ytau, m2 and the field's anomalous dimension have no three-loop term here.
+ * (sm-three-loops.test.ts). The coefficient of lambda^2 yt^4, which memory gave in two versions, is the closed form
+ * 1719/2 + 756 zeta(3) of arXiv:1205.2892 (also from memory; the other, 1719.52, is 7e-7 of lambda away at the Planck
+ * scale). yb, ytau, m2 and the field's anomalous dimension have no three-loop term here.
  *
  * The source gives derivatives of a = (5/3) gY^2, b = g2^2, c = g3^2, y = yt^2 and l = lambda with respect to
  * ln mu^2. For a squared coupling that is g * dg/d(ln mu); for l it is half of dl/d(ln mu). */
